@@ -1,0 +1,342 @@
+"""Spans of a DXF file: records, sections, tables, handles and layers, as byte offsets."""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass
+from functools import cached_property
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from dxfcable.drawing.bytes.pairs import Tags, find_tags, names, plain_pairs, skip_prologue, texts
+from dxfcable.errors import DrawingError
+
+if TYPE_CHECKING:
+    from collections.abc import Iterator
+
+    from numpy.typing import NDArray
+
+    from dxfcable.drawing.bytes.pairs import Pair
+
+BINARY_SENTINEL = b"AutoCAD Binary DXF"
+HANDLE_LIMIT = 1 << 64
+FOLLOWERS = (b"VERTEX", b"ATTRIB", b"SEQEND")
+_CODES = (0, 2, 5, 8, 67, 105, 1001)
+# A code 0 that can be told without counting lines: after a value always comes an integer.
+_RECORD = re.compile(
+    rb"^[ \t]*[+-]?0+[ \t]*\r?\n(?![ \t]*[+-]?\d+[ \t]*\r?$)(?=[ \t]*[A-Za-z0-9_])", re.MULTILINE
+)
+_HEX = np.full(256, 255, np.uint8)
+for _digits in (b"0123456789abcdef", b"0123456789ABCDEF"):
+    _HEX[np.frombuffer(_digits, np.uint8)] = np.arange(16, dtype=np.uint8)
+
+
+@dataclass(frozen=True, slots=True)
+class Block:
+    """A run of records with a name: a section, a table, a block definition.
+
+    `first` and `last` are the records that open and close it.
+    """
+
+    name: str
+    first: int
+    last: int
+
+
+@dataclass(frozen=True, eq=False)
+class Scan:
+    """All records of a drawing.
+
+    Attributes
+    ----------
+    data : bytes
+        The file.
+    starts : (n + 1,) array of int
+        First byte of each record (its code 0), and where the last one ends.
+    kinds : (n,) array of bytes
+        Types, cut after 16 bytes.
+    tags : Tags
+        Codes 2, 5, 8, 67, 105, 1001 beside the zeros.
+    record_of : (k,) array of int
+        Record that each tag belongs to.
+    sections : tuple of Block
+        In file order.
+    damaged : tuple of int
+        Bytes where lines do not pair; reading went on at the next record.
+    """
+
+    data: bytes
+    starts: NDArray[np.int64]
+    kinds: NDArray[np.bytes_]
+    tags: Tags
+    record_of: NDArray[np.int64]
+    sections: tuple[Block, ...]
+    damaged: tuple[int, ...] = ()
+
+    def line(self, offset: int) -> int:
+        """Return the line number of a byte, counted from 1."""
+        return self.data.count(b"\n", 0, offset) + 1
+
+    def section(self, name: str) -> Block | None:
+        """Return the section of that name."""
+        return next((s for s in self.sections if s.name == name), None)
+
+    def span(self, record: int) -> tuple[int, int]:
+        """Return the bytes of one record."""
+        return int(self.starts[record]), int(self.starts[record + 1])
+
+    def pairs(self, record: int, upto: int | None = None) -> Iterator[Pair]:
+        """Yield the tags of one record, or of all before record `upto`."""
+        last = record + 1 if upto is None else upto
+        return plain_pairs(self.data, int(self.starts[record]), int(self.starts[last]))
+
+    def first_tag(self, record: int, code: int) -> bytes | None:
+        """Return the first value of one of the scanned codes in a record."""
+        low, high = np.searchsorted(self.record_of, (record, record + 1))
+        for k in range(low, high):
+            if self.tags.codes[k] == code:
+                return self.data[self.tags.values[k] : self.tags.ends[k]]
+        return None
+
+    def first_tags(self, code: int) -> tuple[NDArray[np.int64], NDArray[np.int64]]:
+        """Return records that hold a code, and the index of their first such tag."""
+        which = np.flatnonzero(self.tags.codes == code)
+        records, first = np.unique(self.record_of[which], return_index=True)
+        return records, which[first]
+
+    @cached_property
+    def heads(self) -> NDArray[np.int64]:
+        """Records of ENTITIES that begin an entity: no vertices, attributes, end marks."""
+        entities = self.section("ENTITIES")
+        if entities is None:
+            return np.empty(0, np.int64)
+        inside = np.arange(entities.first + 1, entities.last)
+        return inside[~np.isin(self.kinds[inside], FOLLOWERS)]
+
+    def entity_span(self, head: int) -> tuple[int, int]:
+        """Return the bytes of an entity with its vertices or attributes."""
+        entities = self.section("ENTITIES")
+        assert entities is not None
+        k = int(np.searchsorted(self.heads, head, side="right"))
+        last = int(self.heads[k]) if k < self.heads.size else entities.last
+        return int(self.starts[head]), int(self.starts[last])
+
+    @cached_property
+    def tables(self) -> tuple[Block, ...]:
+        """Tables of the TABLES section."""
+        section = self.section("TABLES")
+        if section is None:
+            return ()
+        found, first = [], None
+        for k in range(section.first + 1, section.last):
+            if self.kinds[k] == b"TABLE":
+                first = k
+            elif self.kinds[k] == b"ENDTAB" and first is not None:
+                name = (self.first_tag(first, 2) or b"").decode("latin-1").upper()
+                found.append(Block(name, first, k))
+                first = None
+        return tuple(found)
+
+    def table(self, name: str) -> Block | None:
+        """Return the table of that name."""
+        return next((t for t in self.tables if t.name == name), None)
+
+    def rows(self, table: str) -> range:
+        """Return the records between the head of a table and its end."""
+        found = self.table(table)
+        return range(found.first + 1, found.last) if found else range(0)
+
+    @cached_property
+    def header(self) -> dict[str, tuple[Pair, ...]]:
+        """Header variables with their raw tags."""
+        section = self.section("HEADER")
+        result: dict[str, tuple[Pair, ...]] = {}
+        if section is None:
+            return result
+        name = ""
+        values: list[Pair] = []
+        for pair in self.pairs(section.first, section.last):
+            if pair.code == 9:
+                if name:
+                    result.setdefault(name, tuple(values))
+                name, values = pair.value.strip().decode("latin-1").upper(), []
+            elif name and pair.code != 999:
+                values.append(pair)
+        if name:
+            result.setdefault(name, tuple(values))
+        return result
+
+    def header_value(self, name: str) -> bytes | None:
+        """Return the first value of a header variable, blanks taken off."""
+        values = self.header.get(name)
+        return values[0].value.strip() if values else None
+
+    @cached_property
+    def version(self) -> str:
+        """$ACADVER as written, "" where absent."""
+        return (self.header_value("$ACADVER") or b"").decode("latin-1")
+
+    @cached_property
+    def has_handles(self) -> bool:
+        """Whether any entity has a handle."""
+        entities = self.section("ENTITIES")
+        if entities is None:
+            return False
+        which = (self.tags.codes == 5) & (self.tags.ends > self.tags.values)
+        records = self.record_of[which]
+        return bool(((records > entities.first) & (records < entities.last)).any())
+
+    @cached_property
+    def handles(self) -> NDArray[np.uint64]:
+        """Every value of codes 5 and 105, the header left out, that is a hexadecimal number."""
+        header = self.section("HEADER")
+        which = np.flatnonzero(np.isin(self.tags.codes, (5, 105)))
+        if header is not None:  # $HANDSEED stands at code 5 too, and is no handle in use
+            record = self.record_of[which]
+            which = which[(record < header.first) | (record > header.last)]
+        raw = texts(self.data, self.tags.values[which], self.tags.ends[which], 16)
+        grid = raw.view(np.uint8).reshape(-1, 16)
+        value = np.zeros(which.size, np.uint64)
+        good = self.tags.ends[which] - self.tags.values[which] <= 16
+        for column in grid.T:
+            digit = _HEX[column]
+            there = column != 0
+            good &= ~there | (digit < 16)
+            value = np.where(there, value * np.uint64(16) + digit, value)
+        found: NDArray[np.uint64] = value[good & (grid[:, 0] != 0)]
+        return found
+
+
+def scan(data: bytes) -> Scan:
+    """Find the records and sections of a drawing.
+
+    Raises
+    ------
+    DrawingError
+        Where the file is no ASCII DXF, is cut off, or its sections do not nest; names the line.
+    """
+    _refuse_other_formats(data)
+    start = skip_prologue(data)
+    tags, damaged = _all_tags(data, start)
+    zeros = np.flatnonzero(tags.codes == 0)
+    if not zeros.size:
+        msg = "line 1: there is no record in this file"
+        raise DrawingError(
+            msg,
+            code="not-dxf",
+            line=1,
+            remedy="Save it as DXF.",
+        )
+    kinds = names(data, tags, zeros)
+    starts = np.append(tags.starts[zeros], tags.stop)
+    record_of = np.searchsorted(starts[:-1], tags.starts, side="right") - 1
+    draft = Scan(data, starts, kinds, tags, record_of, (), damaged)
+    return Scan(data, starts, kinds, tags, record_of, _sections(draft), damaged)
+
+
+def _all_tags(data: bytes, start: int) -> tuple[Tags, tuple[int, ...]]:
+    """Find tags, going on at the next record where lines do not pair."""
+    parts, damaged = [], []
+    at = start
+    while True:
+        tags = find_tags(data, _CODES, at)
+        parts.append(tags)
+        if tags.fault is None:
+            break
+        damaged.append(tags.fault)
+        found = _RECORD.search(data, tags.fault)
+        if found is None:
+            break
+        at = found.start()
+    if len(parts) == 1:
+        return parts[0], tuple(damaged)
+    last = parts[-1]
+    tags = Tags(
+        codes=np.concatenate([part.codes for part in parts]),
+        starts=np.concatenate([part.starts for part in parts]),
+        values=np.concatenate([part.values for part in parts]),
+        ends=np.concatenate([part.ends for part in parts]),
+        stop=last.stop if last.fault is None else len(data),
+        fault=last.fault,
+    )
+    return tags, tuple(damaged)
+
+
+def _refuse_other_formats(data: bytes) -> None:
+    """Refuse what is no ASCII DXF, saying how to save it."""
+    remedy = "Save it from the CAD program as ASCII DXF, release 12 or later."
+    if data.startswith(BINARY_SENTINEL):
+        msg = "line 1: this is a binary DXF"
+        raise DrawingError(msg, code="binary-dxf", line=1, remedy=remedy)
+    if data[:6].startswith(b"AC1") and data[3:6].isdigit():
+        msg = "line 1: this is a DWG drawing, not a DXF"
+        raise DrawingError(msg, code="dwg", line=1, remedy=remedy)
+    if data[:2] in (b"\xff\xfe", b"\xfe\xff"):
+        msg = "line 1: this file is UTF-16"
+        raise DrawingError(msg, code="utf-16", line=1, remedy=remedy)
+    if not data.strip():
+        msg = "line 1: the file is empty"
+        raise DrawingError(msg, code="not-dxf", line=1, remedy=remedy)
+    head = data[: 1 << 16]
+    if b"\n" not in head and b"\r" in head:
+        msg = "line 1: lines end with a carriage return only"
+        raise DrawingError(
+            msg,
+            code="carriage-returns",
+            line=1,
+            remedy="Save it with line feeds (LF or CRLF).",
+        )
+
+
+def _sections(draft: Scan) -> tuple[Block, ...]:
+    """Pair SECTION with ENDSEC and check what must stand once."""
+    kinds = draft.kinds
+    upper = np.char.upper(kinds)
+    marks = np.flatnonzero(np.isin(upper, (b"SECTION", b"ENDSEC", b"EOF")))
+    found: list[Block] = []
+    opened: int | None = None
+    for k in marks:
+        at = int(draft.starts[k])
+        kind = bytes(upper[k])
+        if kind != bytes(kinds[k]):
+            _fault(draft, at, f"{bytes(kinds[k]).decode()} is in lower case", "lower-case")
+        if kind == b"SECTION":
+            if opened is not None:
+                _fault(draft, at, "a section begins before the last one has ended", "structure")
+            opened = int(k)
+        elif kind == b"ENDSEC":
+            if opened is None:
+                _fault(draft, at, "ENDSEC without a section", "structure")
+                continue
+            found.append(Block(_section_name(draft, opened), opened, int(k)))
+            opened = None
+    if opened is not None or not marks.size or bytes(upper[marks[-1]]) != b"EOF":
+        at = max(int(draft.starts[-1]) - 1, 0)
+        text = "a section has no ENDSEC" if opened is not None else "there is no EOF"
+        _fault(draft, at, f"the file is cut off: {text}", "cut-off")
+    if [s.name for s in found].count("ENTITIES") > 1:
+        second = [s for s in found if s.name == "ENTITIES"][1]
+        _fault(draft, int(draft.starts[second.first]), "a second ENTITIES section", "structure")
+    return tuple(found)
+
+
+def _section_name(draft: Scan, record: int) -> str:
+    """Return a section's name, refusing known ones in lower case."""
+    name = (draft.first_tag(record, 2) or b"").decode("latin-1")
+    known = ("HEADER", "CLASSES", "TABLES", "BLOCKS", "ENTITIES", "OBJECTS")
+    if name.upper() in known and name not in known:
+        _fault(draft, int(draft.starts[record]), f"section {name} is in lower case", "lower-case")
+    return name
+
+
+def _fault(draft: Scan, at: int, text: str, code: str) -> None:
+    """Refuse with the line number."""
+    line = draft.line(at)
+    msg = f"line {line}: {text}"
+    raise DrawingError(
+        msg,
+        code=code,
+        line=line,
+        remedy="Open it in the CAD program, audit it, and save it again as DXF.",
+    )

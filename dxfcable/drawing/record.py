@@ -1,0 +1,196 @@
+"""The record kept in the drawing: inputs, unstressed lengths, memory, and what we opened.
+
+Text lines `key,value,...` joined by `;`, names escaped as `=XX`, in strings of under 250
+bytes on entities of ours. Each string begins `record=`; the first of a part says which part
+it is and how the whole sums up. It is written twice for each cable, and either copy will do.
+"""
+
+from __future__ import annotations
+
+import itertools
+import zlib
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
+
+from dxfcable.errors import DrawingError
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable, Mapping, Sequence
+
+    from dxfcable.model import Cable, FormedCable, Layout, Point
+
+FORMAT = 1
+_PREFIX = "record="
+_CHUNK = 230  # bytes of text a string, below DXF's 255
+_PART = 40  # strings an entity: about 9 kB of the 16 kB that extended data may hold
+_TRIES = 64  # of copies that other programs may have spoiled
+_PLAIN = frozenset("ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789-+._/~*")
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Memory:
+    """What a drafter did to our entities, and nothing that we put.
+
+    Attributes
+    ----------
+    places : mapping of str to Point
+        Id of a label, or name of a part, to the place the drafter gave it.
+    texts : mapping of str to str
+        Id to the text the drafter wrote.
+    """
+
+    places: Mapping[str, Point] = field(default_factory=dict)
+    texts: Mapping[str, str] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class FileFacts:
+    """What concerns the file and not one cable.
+
+    Attributes
+    ----------
+    seed : tuple of str or None
+        $HANDSEED as it was and as we wrote it, None where it was not touched.
+    opened : tuple of str
+        Rows, tables and sections that are ours.
+    origins : tuple of (str, Point)
+        Where each part was put.
+    """
+
+    seed: tuple[str, str] | None = None
+    opened: tuple[str, ...] = ()
+    memory: Memory = field(default_factory=Memory)
+    origins: tuple[tuple[str, Point], ...] = ()
+
+
+def escape(text: str) -> str:
+    """Write any text in letters that survive every CAD program."""
+    return "".join(
+        c if c in _PLAIN else "".join(f"={b:02X}" for b in c.encode("utf-8", "surrogateescape"))
+        for c in text
+    )
+
+
+def unescape(text: str) -> str:
+    """Read what `escape` wrote."""
+    raw = bytearray()
+    at = 0
+    while at < len(text):
+        if text[at] == "=":
+            raw.append(int(text[at + 1 : at + 3], 16))
+            at += 3
+        else:
+            raw += text[at].encode("ascii")
+            at += 1
+    return raw.decode("utf-8", "surrogateescape")
+
+
+def facts_text(facts: FileFacts) -> str:
+    """Return the lines that concern the file."""
+    lines: list[tuple[str, ...]] = []
+    if facts.seed is not None:
+        lines.append(("seed", escape(facts.seed[0]), escape(facts.seed[1])))
+    lines += [("opened", escape(name)) for name in facts.opened]
+    lines += [
+        ("held", escape(k), repr(x), repr(y)) for k, (x, y) in sorted(facts.memory.places.items())
+    ]
+    lines += [("text", escape(k), escape(v)) for k, v in sorted(facts.memory.texts.items())]
+    lines += [("origin", escape(k), repr(x), repr(y)) for k, (x, y) in facts.origins]
+    return ";".join(",".join(line) for line in lines)
+
+
+def cable_text(layout: Layout, cable: Cable, formed: FormedCable) -> str:
+    """Return the lines of one cable: its inputs as used, status and unstressed lengths."""
+    rule = formed.rule
+    lines: list[tuple[str, ...]] = [
+        ("units", layout.length_unit, layout.force_unit or ""),
+        ("cable", escape(cable.mark), formed.status),
+        ("rule", rule.kind.value, repr(rule.value), *(repr(v) for v in rule.point or ())),
+        ("under", escape(formed.under)),
+        ("weight", repr(cable.weight), escape(cable.weight_case or "")),
+        ("ea", "" if cable.ea is None else repr(cable.ea)),
+        ("datum", "" if cable.datum is None else repr(cable.datum)),
+    ]
+    lines += [
+        ("support", escape(s.mark), repr(s.x), repr(s.y), s.kind.value) for s in cable.supports
+    ]
+    for load in cable.loads:
+        cases = [part for case, value in load.cases for part in (escape(case), repr(value))]
+        lines.append(("load", escape(load.mark), repr(load.x), repr(load.y), load.source, *cases))
+    lines += [("piece", repr(s.unstressed_length)) for s in formed.segments]
+    return ";".join(",".join(line) for line in lines)
+
+
+def parts(text: str) -> list[list[str]]:
+    """Cut a record into parts, each the strings for one entity."""
+    total = f"{zlib.crc32(text.encode('ascii')):08X}"
+    chunks = [text[k : k + _CHUNK] for k in range(0, len(text), _CHUNK)] or [""]
+    groups = [chunks[k : k + _PART] for k in range(0, len(chunks), _PART)]
+    return [
+        [f"{_PREFIX}{FORMAT}/{k}/{len(groups)}/{total}", *(f"{_PREFIX}{c}" for c in group)]
+        for k, group in enumerate(groups, start=1)
+    ]
+
+
+def join(carriers: Iterable[Sequence[str]]) -> list[str]:
+    """Put records together from the strings of all carriers, each record once.
+
+    Raises
+    ------
+    DrawingError
+        Where a later version of this program wrote the record.
+    """
+    found: dict[tuple[str, int], dict[int, dict[str, None]]] = {}
+    for strings in carriers:
+        if not strings:
+            continue
+        head = strings[0].removeprefix(_PREFIX).split("/")
+        if head[0].isdigit() and int(head[0]) > FORMAT:
+            msg = f"this drawing was solved by a later version (record format {head[0]})"
+            raise DrawingError(
+                msg,
+                code="newer-record",
+                remedy="Update dxfcable.",
+            )
+        if len(head) != 4 or not all(part.isdigit() for part in head[:3]):
+            continue
+        body = "".join(s.removeprefix(_PREFIX) for s in strings[1:])
+        group = found.setdefault((head[3], int(head[2])), {})
+        group.setdefault(int(head[1]), {}).setdefault(body)
+    result = []
+    for (total, count), group in found.items():
+        copies = [list(group.get(k, {})) for k in range(1, count + 1)]
+        for choice in itertools.islice(itertools.product(*copies), _TRIES):
+            text = "".join(choice)
+            if f"{zlib.crc32(text.encode('ascii', 'replace')):08X}" == total:
+                result.append(text)
+                break
+    return result
+
+
+def read_facts(records: Sequence[str]) -> FileFacts:
+    """Read what concerns the file out of all records of a drawing."""
+    seed: tuple[str, str] | None = None
+    opened: dict[str, None] = {}
+    places: dict[str, Point] = {}
+    texts: dict[str, str] = {}
+    origins: dict[str, Point] = {}
+    for record in records:
+        for line in record.split(";"):
+            key, *values = line.split(",")
+            if key == "seed" and seed is None:
+                seed = unescape(values[0]), unescape(values[1])
+            elif key == "opened":
+                opened.setdefault(unescape(values[0]))
+            elif key == "held":
+                places[unescape(values[0])] = (float(values[1]), float(values[2]))
+            elif key == "text":
+                texts[unescape(values[0])] = unescape(values[1])
+            elif key == "origin":
+                origins[unescape(values[0])] = (float(values[1]), float(values[2]))
+    return FileFacts(
+        seed=seed,
+        opened=tuple(opened),
+        memory=Memory(places=places, texts=texts),
+        origins=tuple(origins.items()),
+    )
