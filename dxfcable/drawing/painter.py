@@ -1,0 +1,310 @@
+"""From Layout and Solution to items: elevation, labels, force diagram, joints, schedule.
+
+Nothing here computes a force. Places are decided on rounded numbers and in a fixed order.
+"""
+
+from __future__ import annotations
+
+from collections import Counter
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
+
+import numpy as np
+
+from dxfcable.drawing.block_places import free_corner
+from dxfcable.drawing.diagram_block import BETWEEN, BlockMaker, arranged
+from dxfcable.drawing.elevation_labels import elevation_labels, room_above
+from dxfcable.drawing.elevation_view import View, draw_elevation, draw_span_dimensions
+from dxfcable.drawing.free_place import grid_over, grown, join
+from dxfcable.drawing.items import Painting, PlacedDiagram
+from dxfcable.drawing.label_ground import LabelGround
+from dxfcable.drawing.label_placing import put_labels
+from dxfcable.drawing.plotting import plan_plotting
+from dxfcable.drawing.schedule_text import draw_schedule
+from dxfcable.drawing.sketch import Sketch
+from dxfcable.drawing.views import join_views, rounder_of
+from dxfcable.model import Finding, Severity
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable, Mapping
+
+    from dxfcable.drawing.diagram_block import Block
+    from dxfcable.drawing.excerpt import Obstacles
+    from dxfcable.drawing.items import Item
+    from dxfcable.drawing.plotting import Plotting
+    from dxfcable.drawing.rounding import Rounder
+    from dxfcable.drawing.sketch import Bounds
+    from dxfcable.model import Layout, Point, Rectangle, Solution
+    from dxfcable.settings import Settings
+
+_MARGIN = 3.0  # kept free about a block, in text heights
+_ROUND = 15.0  # drawing about an elevation that its labels look at, in text heights
+_LABEL_CELLS = 100_000
+
+
+def paint(
+    layout: Layout,
+    solution: Solution,
+    *,
+    obstacles: Obstacles,
+    settings: Settings,
+    plot_scale: str | None,
+    held_places: Mapping[str, Point],
+    held_texts: Mapping[str, str],
+) -> Painting:
+    """Paint all cables of a drawing.
+
+    Parameters
+    ----------
+    layout, solution : Layout, Solution
+        What is drawn, what follows; cables in the same order.
+    obstacles : Obstacles
+        The drafter's drawing.
+    settings : Settings
+        Text heights and plotting scale.
+    plot_scale : str or None
+        As given on the command line.
+    held_places : mapping of str to Point
+        Id of a label, or a part, to the place that a drafter gave it: its alignment point, or
+        the part's origin as `Painting.origins` names it.
+    held_texts : mapping of str to str
+        Id to the text that a drafter put in place of ours.
+
+    Returns
+    -------
+    Painting
+
+    Raises
+    ------
+    ValueError
+        If layout and solution do not have the same cables.
+    QuantityError
+        If the plotting scale told is none.
+    """
+    spans = [cable.supports[-1].x - cable.supports[0].x for cable in layout.cables]
+    if not spans:
+        message = "there is no cable to paint"
+        raise ValueError(message)
+    greatest = max(
+        b.x - a.x
+        for cable in layout.cables
+        for a, b in zip(cable.supports, cable.supports[1:], strict=False)
+    )
+    heights = [max(n.y for n in c.nodes) - min(n.y for n in c.nodes) for c in solution.cables]
+    size = (max(spans), max(heights))
+    plotting = plan_plotting(layout, settings, plot_scale, span=greatest, size=size)
+    # Column by column in memory: every free place asks for all of one coordinate at a time.
+    obstacles = type(obstacles)(
+        np.asfortranarray(obstacles.segments), np.asfortranarray(obstacles.boxes)
+    )
+    painter = _Painter(
+        layout=layout,
+        obstacles=obstacles,
+        plotting=plotting,
+        held_places=held_places,
+        held_texts=held_texts,
+    )
+    views = join_views(layout, solution, settings, plotting.text_height)
+    painter.paint_elevations(views)
+    for index, view in enumerate(views):
+        painter.paint_diagram(index, view)
+        painter.paint_schedule(view, settings.show.reference_temperature)
+    _check_ids(painter.items)
+    return Painting(
+        items=tuple(painter.items),
+        diagrams=tuple(painter.diagrams),
+        origins=tuple(painter.origins),
+        text_height=plotting.text_height,
+        plot_scale=plotting.scale,
+        findings=(plotting.finding, *painter.findings),
+    )
+
+
+def _check_ids(items: Iterable[Item]) -> None:
+    """Two items of one id would be one entity to the ledger: a fault of ours."""
+    doubled = [name for name, count in Counter(item.id for item in items).items() if count > 1]
+    if doubled:
+        message = f"ids are not unique: {', '.join(doubled)}"
+        raise ValueError(message)
+
+
+@dataclass(slots=True, kw_only=True, eq=False)
+class _Painter:
+    """Items painted so far, and where blocks stand."""
+
+    layout: Layout
+    obstacles: Obstacles
+    plotting: Plotting
+    held_places: Mapping[str, Point]
+    held_texts: Mapping[str, str]
+    items: list[Item] = field(default_factory=list)
+    diagrams: list[PlacedDiagram] = field(default_factory=list)
+    origins: list[tuple[str, Point]] = field(default_factory=list)
+    findings: list[Finding] = field(default_factory=list)
+    bounds: dict[str, Bounds] = field(default_factory=dict)
+    beside: dict[str, Bounds] = field(default_factory=dict)
+
+    def paint_elevations(self, views: tuple[View, ...]) -> None:
+        """Paint the linework of all cables, then their labels clear of all of it."""
+        ground = LabelGround(self.plotting.text_height)
+        sketches = []
+        for view in views:
+            sketch = Sketch(rounder_of(view.cable), self.held_texts)
+            draw_elevation(view, sketch)
+            grid = grid_over(
+                grown(sketch.bounds(), _ROUND * view.height), 0.5 * view.height, _LABEL_CELLS
+            )
+            grid.add_segments(self.obstacles.segments)
+            grid.add_boxes(self.obstacles.boxes)
+            level = draw_span_dimensions(view, sketch, grid, room_above(view))
+            ground.add(sketch.items)
+            sketches.append((view, sketch, grid, level))
+        for view, sketch, grid, level in sketches:
+            ground.drawn = grid
+            put_labels(elevation_labels(view, level), sketch, ground, self.held_places)
+            self.items += sketch.items
+            self.bounds[view.prefix] = sketch.bounds()
+
+    def paint_diagram(self, index: int, view: View) -> None:
+        """Paint force diagram and joints: in the frame, else where it is free."""
+        rounder = rounder_of(view.cable)
+        maker = BlockMaker(
+            view=view, plotting=self.plotting, rounder=rounder, held_texts=self.held_texts
+        )
+        if view.cable.frame is not None and self._paint_in_frame(
+            index, view, maker, view.cable.frame
+        ):
+            return
+        block = maker.free_standing()
+        free = [sketch for name, sketch in block.parts if name not in self.held_places]
+        corner, where = (0.0, 0.0), ""
+        if free:
+            _, width, height = arranged(free, BETWEEN * view.height)
+            x0, y0, _, _ = self.bounds[view.prefix]
+            wanted = (x0, y0 - _MARGIN * view.height - height)
+            corner, where = self._free_corner(view, width, height, wanted)
+        self._stand(index, view, block, rounder, corner, where)
+
+    def _paint_in_frame(self, index: int, view: View, maker: BlockMaker, frame: Rectangle) -> bool:
+        """Paint the block in the middle of the frame; False, with a note, if it is too small."""
+        block = maker.in_frame(frame.x1 - frame.x0, frame.y1 - frame.y0)
+        if block is None:
+            self._note(
+                "frame-small",
+                view,
+                "the frame is too small for the force diagram at this plotting scale",
+                (frame.x0, frame.y0),
+                "Draw a larger frame, or plot at a larger scale, as 1:50 for 1:100.",
+            )
+            return False
+        corner = (
+            0.5 * (frame.x0 + frame.x1 - block.width),
+            0.5 * (frame.y0 + frame.y1 - block.height),
+        )
+        rounder = maker.rounder
+        self._stand(index, view, block, rounder, corner, "in the frame drawn")
+        for name, sketch in maker.joints_only(block):
+            self._paint_alone(view, name, sketch, rounder, "joint-placed", "joint")
+        return True
+
+    def paint_schedule(self, view: View, temperature: str) -> None:
+        """Paint the schedule right of the diagram, or where it is free."""
+        rounder = rounder_of(view.cable)
+        sketch = draw_schedule(view, temperature, rounder, self.held_texts)
+        name = f"{view.prefix}/schedule"
+        self._paint_alone(view, name, sketch, rounder, "schedule-placed", "schedule")
+
+    def _paint_alone(
+        self, view: View, name: str, sketch: Sketch, rounder: Rounder, code: str, word: str
+    ) -> None:
+        """Paint a part that stands by itself."""
+        x0, y0, x1, y1 = sketch.bounds()
+        if name in self.held_places:
+            origin, where = rounder.point(self.held_places[name]), "where it was moved to"
+        else:
+            beside = self.beside.get(view.prefix, self.bounds[view.prefix])
+            margin = _MARGIN * view.height
+            wanted = (beside[2] + margin, beside[3] - (y1 - y0))
+            corner, where = self._free_corner(view, x1 - x0, y1 - y0, wanted)
+            origin = rounder.point((corner[0] - x0, corner[1] - y0))
+        self._add_part(name, sketch, origin, rounder)
+        self.beside[view.prefix] = (x0 + origin[0], y0 + origin[1], x1 + origin[0], y1 + origin[1])
+        self._note(code, view, f"the {word} stands {where}", origin)
+
+    def _stand(
+        self,
+        index: int,
+        view: View,
+        block: Block,
+        rounder: Rounder,
+        corner: Point,
+        where: str,
+    ) -> None:
+        """Put a block's parts in a row from a corner on; a held part goes where it is held."""
+        free = [part for part in block.parts if part[0] not in self.held_places]
+        offsets: tuple[Point, ...] = ()
+        if free:
+            offsets, _, _ = arranged([sketch for _, sketch in free], BETWEEN * view.height)
+        origins = {
+            name: rounder.point((corner[0] + dx, corner[1] + dy))
+            for (name, _), (dx, dy) in zip(free, offsets, strict=True)
+        }
+        taken = []
+        for name, sketch in block.parts:
+            origin = origins.get(name) or rounder.point(self.held_places[name])
+            self._add_part(name, sketch, origin, rounder)
+            x0, y0, x1, y1 = sketch.bounds()
+            taken.append((x0 + origin[0], y0 + origin[1], x1 + origin[0], y1 + origin[1]))
+        diagram_name = block.parts[0][0]
+        origin = dict(self.origins)[diagram_name]
+        self._record_diagrams(index, block, origin, rounder)
+        self.beside[view.prefix] = join(*taken)
+        stands = "where it was moved to" if diagram_name in self.held_places else where
+        self._note("diagram-placed", view, f"the force diagram stands {stands}", origin)
+
+    def _record_diagrams(self, index: int, block: Block, origin: Point, rounder: Rounder) -> None:
+        def there(point: Point) -> Point:
+            return rounder.point((point[0] + origin[0], point[1] + origin[1]))
+
+        for span, geometry in enumerate(block.diagram.spans):
+            self.diagrams.append(
+                PlacedDiagram(
+                    cable=index,
+                    span=span,
+                    pole=there(geometry.pole),
+                    load_line=tuple(there(p) for p in geometry.load_line),
+                    rays=tuple(there(p) for p in geometry.rays),
+                    scale=block.diagram.scale,
+                )
+            )
+
+    def _add_part(self, name: str, sketch: Sketch, origin: Point, rounder: Rounder) -> None:
+        self.items += sketch.moved(origin, rounder)
+        self.origins.append((name, origin))
+
+    def _free_corner(
+        self, view: View, width: float, height: float, wanted: Point
+    ) -> tuple[Point, str]:
+        return free_corner(
+            (width, height),
+            wanted,
+            margin=_MARGIN * view.height,
+            view=self.bounds[view.prefix],
+            items=self.items,
+            obstacles=self.obstacles,
+            frames=[cable.frame for cable in self.layout.cables if cable.frame is not None],
+        )
+
+    def _note(self, code: str, view: View, what: str, at: Point, remedy: str = "") -> None:
+        """Add a note with the place of what it tells."""
+        text = f"Cable {view.formed.mark}: {what}, at ({at[0]:.6g}, {at[1]:.6g})."
+        self.findings.append(
+            Finding(
+                code=code,
+                severity=Severity.NOTE,
+                text=text,
+                remedy=remedy,
+                cable=view.formed.mark,
+                at=at,
+            )
+        )
