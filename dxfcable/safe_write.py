@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
 
 Piece = bytes | memoryview
+_BLOCK = 1 << 20
 
 
 def write(path: Path, pieces: Sequence[Piece]) -> bool:
@@ -94,8 +95,11 @@ def _holds(target: Path, pieces: Iterable[Piece]) -> bool:
     """Tell whether a file holds just these bytes."""
     with target.open("rb") as file:
         for piece in pieces:
-            if file.read(len(piece)) != piece:
-                return False
+            rest = memoryview(piece)
+            while rest:
+                if file.read(min(len(rest), _BLOCK)) != rest[:_BLOCK]:
+                    return False
+                rest = rest[_BLOCK:]
         return not file.read(1)
 
 

@@ -16,6 +16,7 @@ if TYPE_CHECKING:
     from dxfcable.model import Point
 
 _TOLERANCE = 1e-6  # of a cell: what touches a border of cells does not reach over it
+_AT_ONCE = 1 << 16  # lines
 _PIECES = 1_000_000  # most pieces that sloping lines are cut into
 
 
@@ -82,6 +83,11 @@ class OccupancyGrid:
         segments : (m, 4) array
             x0, y0, x1, y1 [length].
         """
+        for k in range(0, len(segments), _AT_ONCE):
+            self._add_some(segments[k : k + _AT_ONCE])
+
+    def _add_some(self, segments: NDArray[np.float64]) -> None:
+        """Take the cells of a few lines, so that masks and copies stay small."""
         ax, ay, bx, by = segments.T
         x1, y1 = self.x0 + self.columns * self.cell, self.y0 + self.rows * self.cell
         # Most of a large drawing lies elsewhere: tell so by four columns, then look closer.

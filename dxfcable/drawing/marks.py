@@ -120,7 +120,7 @@ def _marked_records(drawing: Scan) -> list[int]:
         for k in which
         if drawing.data[tags.values[k] : tags.ends[k]].upper() == name
     }
-    return sorted(records & set(drawing.heads.tolist())) if records else []
+    return sorted(k for k in records if drawing.is_head(k))
 
 
 def _read(drawing: Scan, record: int) -> Marked | None:

@@ -8,10 +8,12 @@ import numpy as np
 
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import layer_key
-from dxfcable.drawing.bytes.pairs import find_tags, skip_prologue, texts
+from dxfcable.drawing.bytes.pairs import distinct, find_tags, skip_prologue, texts
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable
+    from collections.abc import Iterable, Iterator
+
+    from numpy.typing import NDArray
 
     from dxfcable.drawing.bytes.pairs import Tags
     from dxfcable.drawing.bytes.scan import Scan
@@ -19,7 +21,8 @@ if TYPE_CHECKING:
 Row = tuple[str, str]  # table and name
 _CODE = {"LAYER": 8, "LTYPE": 6, "STYLE": 7, "APPID": 1001}
 _SCANNED = frozenset({"LAYER", "APPID"})
-_WIDTH = 64
+_WIDTH = 32
+_AT_ONCE = 1 << 15
 
 
 def row_key(name: str) -> str:
@@ -58,20 +61,34 @@ def users(
 def _first(
     drawing: Scan, tags: Tags, wanted: dict[tuple[int, str], Row], without: frozenset[int]
 ) -> dict[Row, int]:
-    """Search tags for names, each distinct name decoded once."""
+    """Search tags for names, each distinct beginning looked at once."""
     encoding, _ = encoding_of(drawing)
     found: dict[Row, int] = {}
     for code in {code for code, _ in wanted}:
+        keys = {key: row for (c, key), row in wanted.items() if c == code}
         which = np.flatnonzero(tags.codes == code)
-        starts, ends = tags.values[which], tags.ends[which]
-        names, group = np.unique(texts(drawing.data, starts, ends, _WIDTH), return_inverse=True)
-        for number, raw in enumerate(names):
-            row = wanted.get((code, layer_key(bytes(raw), encoding)))
-            if row is None or row in found:
-                continue
-            at = tags.starts[which[group == number]]
-            records = np.searchsorted(drawing.starts[:-1], at, side="right") - 1
-            outside = records[~np.isin(records, list(without))] if without else records
-            if outside.size:
-                found[row] = int(outside[0])
+        for k in range(0, which.size, _AT_ONCE):
+            for row, record in _named(drawing, tags, which[k : k + _AT_ONCE], keys, encoding):
+                if record not in without:
+                    found.setdefault(row, record)
     return found
+
+
+def _named(
+    drawing: Scan, tags: Tags, which: NDArray[np.intp], keys: dict[str, Row], encoding: str
+) -> Iterator[tuple[Row, int]]:
+    """Yield rows that some tags of one code name, with the record that does."""
+    names = texts(drawing.data, tags.values[which], tags.ends[which], _WIDTH)
+    first, group = distinct(names)
+    for number, raw in enumerate(names[first]):
+        key = layer_key(bytes(raw), encoding)
+        is_whole = len(raw) < _WIDTH
+        if is_whole and key not in keys:
+            continue
+        if not is_whole and not any(k.startswith(key[: _WIDTH // 4]) for k in keys):
+            continue
+        for k in which[group == number]:
+            name = layer_key(drawing.data[tags.values[k] : tags.ends[k]], encoding)
+            if name in keys:
+                at = np.searchsorted(drawing.starts[:-1], tags.starts[k], side="right")
+                yield keys[name], int(at) - 1

@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.bytes.decode import codec, decode, layer_key
-from dxfcable.drawing.bytes.pairs import texts
+from dxfcable.drawing.bytes.pairs import distinct, texts
 from dxfcable.errors import DrawingError
 
 if TYPE_CHECKING:
@@ -19,8 +19,9 @@ if TYPE_CHECKING:
     from dxfcable.drawing.bytes.scan import Scan
 
 _TABLES = ("LTYPE", "LAYER", "STYLE", "APPID", "BLOCK_RECORD")
-_LAYER_WIDTH = 64  # compared in full only where the beginning fits
+_LAYER_WIDTH = 32  # compared in full only where the beginning fits
 _FIRST_KEY = 1 << 40
+_AT_ONCE = 1 << 15
 
 
 @dataclass(frozen=True, slots=True)
@@ -58,10 +59,26 @@ def records_on(drawing: Scan, layers: frozenset[str]) -> NDArray[np.int64]:
     records, tags = drawing.first_tags(8)
     if not records.size:
         return records
-    starts, ends = drawing.tags.values[tags], drawing.tags.ends[tags]
-    names, group = np.unique(texts(drawing.data, starts, ends, _LAYER_WIDTH), return_inverse=True)
     encoding, _ = encoding_of(drawing)
-    fits = np.array([_fits(bytes(name), layers, encoding) for name in names], np.bool_)
+    hits = [
+        _on(drawing, records[k : k + _AT_ONCE], tags[k : k + _AT_ONCE], layers, encoding)
+        for k in range(0, records.size, _AT_ONCE)
+    ]
+    return np.concatenate(hits)
+
+
+def _on(
+    drawing: Scan,
+    records: NDArray[np.int64],
+    tags: NDArray[np.int64],
+    layers: frozenset[str],
+    encoding: str,
+) -> NDArray[np.int64]:
+    """Return those of some records that are on the layers."""
+    starts, ends = drawing.tags.values[tags], drawing.tags.ends[tags]
+    names = texts(drawing.data, starts, ends, _LAYER_WIDTH)
+    first, group = distinct(names)
+    fits = np.array([_fits(bytes(name), layers, encoding) for name in names[first]], np.bool_)
     hit = np.flatnonzero(fits[group])
     exact = [k for k in hit if layer_key(drawing.data[starts[k] : ends[k]], encoding) in layers]
     return records[exact]
@@ -72,7 +89,7 @@ def _fits(name: bytes, layers: frozenset[str], encoding: str) -> bool:
     key = layer_key(name, encoding)
     if len(name) < _LAYER_WIDTH:
         return key in layers
-    return any(layer.startswith(key[: _LAYER_WIDTH // 8]) for layer in layers)
+    return any(layer.startswith(key[: _LAYER_WIDTH // 4]) for layer in layers)
 
 
 def cut(drawing: Scan, layers: Iterable[str], leave_out: frozenset[int] = frozenset()) -> Cutting:
@@ -99,14 +116,15 @@ def cut(drawing: Scan, layers: Iterable[str], leave_out: frozenset[int] = frozen
     chosen: set[int] = set()
     if entities is not None:
         inside = on_layers[(on_layers > entities.first) & (on_layers < entities.last)]
-        chosen = set(inside.tolist()) & set(drawing.heads.tolist())
+        chosen = set(inside[np.isin(inside, drawing.heads)].tolist())
         chosen |= blocks.inserts_reaching(on_layers)
     chosen -= leave_out
     paper = {k for k in chosen if drawing.first_tag(k, 67) == b"1"}
     first_key = _free_run(drawing, len(chosen))
     kept, outside, body = [], [], []
+    line = _Lines(drawing)
     for number, record in enumerate(sorted(chosen)):
-        head = _kept(drawing, record, f"{first_key + number:X}")
+        head = _kept(drawing, record, f"{first_key + number:X}", line)
         if record in paper:
             layer = decode(drawing.first_tag(record, 8) or b"", encoding)
             outside.append((head, layer))
@@ -126,12 +144,25 @@ def _free_run(drawing: Scan, count: int) -> int:
     return first
 
 
-def _kept(drawing: Scan, record: int, key: str) -> Kept:
+class _Lines:
+    """Line numbers of ascending bytes, each line counted once."""
+
+    def __init__(self, drawing: Scan) -> None:
+        self._data = drawing.data
+        self._at, self._line = 0, 1
+
+    def __call__(self, offset: int) -> int:
+        """Return the line number of a byte not before the last one asked for."""
+        self._line += self._data.count(b"\n", self._at, offset)
+        self._at = offset
+        return self._line
+
+
+def _kept(drawing: Scan, record: int, key: str, line: _Lines) -> Kept:
     """Describe one entity."""
-    start, _ = drawing.span(record)
     raw = drawing.first_tag(record, 5)
     handle = raw.decode("latin-1") if raw else None
-    return Kept(record, handle, drawing.line(start), key)
+    return Kept(record, handle, line(int(drawing.starts[record])), key)
 
 
 def _with_key(drawing: Scan, record: int, key: str) -> bytes:

@@ -8,7 +8,7 @@ pattern search. `plain_pairs` does the same for short ranges, one pair after the
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, NamedTuple
+from typing import TYPE_CHECKING, NamedTuple, TypeAlias
 
 import numpy as np
 
@@ -20,11 +20,18 @@ if TYPE_CHECKING:
 CHUNK = 1 << 20
 _BLANK = b" \t\r"
 _NAME_WIDTH = 16
+_ROWS = 1 << 14  # at a time, so that masks stay small
 _LF, _PLUS, _MINUS = 10, 43, 45
 _DIGITS = 9
+_SMALL = 1 << 31
+_MIXER = np.uint64(0x9E3779B97F4A7C15)  # odd, so that no bit of a string is lost
 _HIGHEST_CODE = 1071
 _IS_BLANK = np.zeros(256, np.bool_)
 _IS_BLANK[[9, 13, 32]] = True
+
+
+# Offsets of 32 bits where the file is small enough: half the memory for all tags of a drawing.
+Offsets: TypeAlias = "NDArray[np.signedinteger]"
 
 
 class Pair(NamedTuple):
@@ -54,12 +61,23 @@ class Tags:
         Start of the first code line that is no integer; tags after it are missing.
     """
 
-    codes: NDArray[np.int64]
-    starts: NDArray[np.int64]
-    values: NDArray[np.int64]
-    ends: NDArray[np.int64]
+    codes: Offsets
+    starts: Offsets
+    values: Offsets
+    ends: Offsets
     stop: int
     fault: int | None
+
+    def some(self, which: NDArray[np.intp]) -> Tags:
+        """Return some of the tags."""
+        return Tags(
+            self.codes[which],
+            self.starts[which],
+            self.values[which],
+            self.ends[which],
+            self.stop,
+            self.fault,
+        )
 
 
 def skip_prologue(data: bytes) -> int:
@@ -93,7 +111,7 @@ def find_tags(data: bytes, wanted: Iterable[int], start: int, end: int | None = 
     limit = len(data) if end is None else end
     is_wanted = np.zeros(_HIGHEST_CODE + 2, np.bool_)
     is_wanted[list(wanted)] = True
-    parts: list[tuple[NDArray[np.int64], ...]] = []
+    parts = _Parts(np.int32 if limit < _SMALL else np.int64)
     at, size, fault = start, CHUNK, None
     while at < limit and fault is None:
         lines = _lines(view, at, min(at + size, limit), limit, len(data))
@@ -113,13 +131,12 @@ def find_tags(data: bytes, wanted: Iterable[int], start: int, end: int | None = 
         found = codes[hit]
         if end is None and (cut := _eof(data, found, values, ends)) is not None:
             at = int(stops[1::2][hit[cut]]) + 1
-            parts.append(
-                (found[: cut + 1], begins[::2][hit][: cut + 1], values[: cut + 1], ends[: cut + 1])
-            )
-            return _tags(parts, min(at, len(data)), None)
-        parts.append((found, begins[::2][hit], values, ends))
+            last = cut + 1
+            parts.add(found[:last], begins[::2][hit][:last], values[:last], ends[:last])
+            return parts.joined(min(at, len(data)), None)
+        parts.add(found, begins[::2][hit], values, ends)
         size = CHUNK
-    return _tags(parts, at, fault)
+    return parts.joined(at, fault)
 
 
 def names(data: bytes, tags: Tags, which: NDArray[np.intp]) -> NDArray[np.bytes_]:
@@ -127,17 +144,51 @@ def names(data: bytes, tags: Tags, which: NDArray[np.intp]) -> NDArray[np.bytes_
     return texts(data, tags.values[which], tags.ends[which], _NAME_WIDTH)
 
 
-def texts(
-    data: bytes, starts: NDArray[np.int64], ends: NDArray[np.int64], width: int
-) -> NDArray[np.bytes_]:
+def texts(data: bytes, starts: Offsets, ends: Offsets, width: int) -> NDArray[np.bytes_]:
     """Return byte ranges as an array of strings of at most `width` bytes."""
+    result = np.zeros((starts.size, width), np.uint8)
     view = np.frombuffer(data, np.uint8)
-    columns = np.arange(width)
-    index = starts[:, None] + columns
-    inside = index < ends[:, None]
-    grid = np.where(inside, view[np.minimum(index, len(data) - 1)], 0).astype(np.uint8)
-    result: NDArray[np.bytes_] = np.ascontiguousarray(grid).view(f"S{width}").reshape(-1)
-    return result
+    last = view.size - width
+    # Whole rows are copied where they fit before the end of the file; the rest one by one.
+    if last >= 0:
+        windows = np.lib.stride_tricks.sliding_window_view(view, width)
+        for k in range(0, starts.size, _ROWS):
+            part = starts[k : k + _ROWS]
+            result[k : k + _ROWS] = windows[np.minimum(part, last)]
+    lengths = np.minimum(ends - starts, width)
+    for at_end in np.flatnonzero(starts > max(last, -1)):
+        raw = data[starts[at_end] : ends[at_end]][:width]
+        result[at_end] = 0
+        result[at_end, : len(raw)] = np.frombuffer(raw, np.uint8)
+    columns = np.arange(width, dtype=np.int64)
+    for k in range(0, starts.size, _ROWS):
+        result[k : k + _ROWS][columns >= lengths[k : k + _ROWS, None]] = 0
+    flat: NDArray[np.bytes_] = result.view(f"S{width}").reshape(-1)
+    return flat
+
+
+def distinct(rows: NDArray[np.bytes_]) -> tuple[NDArray[np.intp], NDArray[np.intp]]:
+    """Group equal strings without sorting them as strings.
+
+    Returns
+    -------
+    tuple of arrays
+        Index of one string of each group, and the group of each string.
+    """
+    width = rows.dtype.itemsize
+    words = rows.view(np.uint8).reshape(-1, width)
+    sums = np.zeros(rows.size, np.uint64)
+    for k in range(0, width, 8):
+        piece = np.ascontiguousarray(words[:, k : k + 8]).view(np.uint64).reshape(-1)
+        sums = (sums ^ piece) * _MIXER
+        sums ^= sums >> np.uint64(29)
+    _, first, group = np.unique(sums, return_index=True, return_inverse=True)
+    ones = rows[first]
+    blocks = (slice(k, k + _ROWS) for k in range(0, rows.size, _ROWS))
+    if not all((ones[group[block]] == rows[block]).all() for block in blocks):
+        # Two strings share a sum: sort after all.
+        _, first, group = np.unique(rows, return_index=True, return_inverse=True)
+    return first, group
 
 
 def plain_pairs(data: bytes, start: int, end: int) -> Iterator[Pair]:
@@ -238,10 +289,22 @@ def _eof(
     return None
 
 
-def _tags(parts: list[tuple[NDArray[np.int64], ...]], stop: int, fault: int | None) -> Tags:
-    """Join the blocks."""
-    if not parts:
-        empty = np.empty(0, np.int64)
-        return Tags(empty, empty, empty, empty, stop, fault)
-    columns = [np.concatenate(column) for column in zip(*parts, strict=True)]
-    return Tags(columns[0], columns[1], columns[2], columns[3], stop, fault)
+class _Parts:
+    """Tags block by block, joined column by column so that only one is ever held twice."""
+
+    def __init__(self, kind: type[np.signedinteger]) -> None:
+        self._kinds: tuple[type[np.signedinteger], ...] = (np.int16, kind, kind, kind)
+        self._columns: tuple[list[Offsets], ...] = ([], [], [], [])
+
+    def add(self, *found: NDArray[np.int64]) -> None:
+        """Add codes, starts, values and ends of one block."""
+        for column, part, kind in zip(self._columns, found, self._kinds, strict=True):
+            column.append(part.astype(kind))
+
+    def joined(self, stop: int, fault: int | None) -> Tags:
+        """Return all tags."""
+        whole = []
+        for column, kind in zip(self._columns, self._kinds, strict=True):
+            whole.append(np.concatenate(column) if column else np.empty(0, kind))
+            column.clear()
+        return Tags(whole[0], whole[1], whole[2], whole[3], stop, fault)

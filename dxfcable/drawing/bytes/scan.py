@@ -23,6 +23,7 @@ BINARY_SENTINEL = b"AutoCAD Binary DXF"
 HANDLE_LIMIT = 1 << 64
 FOLLOWERS = (b"VERTEX", b"ATTRIB", b"SEQEND")
 _CODES = (0, 2, 5, 8, 67, 105, 1001)
+_KEPT = (2, 8, 67, 1001)
 # A code 0 that can be told without counting lines: after a value always comes an integer.
 _RECORD = re.compile(
     rb"^[ \t]*[+-]?0+[ \t]*\r?\n(?![ \t]*[+-]?\d+[ \t]*\r?$)(?=[ \t]*[A-Za-z0-9_])", re.MULTILINE
@@ -57,9 +58,13 @@ class Scan:
     kinds : (n,) array of bytes
         Types, cut after 16 bytes.
     tags : Tags
-        Codes 2, 5, 8, 67, 105, 1001 beside the zeros.
+        Codes 2, 8, 67 and 1001.
     record_of : (k,) array of int
         Record that each tag belongs to.
+    handles : (h,) array of unsigned int
+        Every value of codes 5 and 105, the header left out, that is a hexadecimal number.
+    has_handles : bool
+        Whether any entity has a handle.
     sections : tuple of Block
         In file order.
     damaged : tuple of int
@@ -70,7 +75,9 @@ class Scan:
     starts: NDArray[np.int64]
     kinds: NDArray[np.bytes_]
     tags: Tags
-    record_of: NDArray[np.int64]
+    record_of: NDArray[np.int32]
+    handles: NDArray[np.uint64]
+    has_handles: bool
     sections: tuple[Block, ...]
     damaged: tuple[int, ...] = ()
 
@@ -92,17 +99,26 @@ class Scan:
         return plain_pairs(self.data, int(self.starts[record]), int(self.starts[last]))
 
     def first_tag(self, record: int, code: int) -> bytes | None:
-        """Return the first value of one of the scanned codes in a record."""
+        """Return the first value of a code in a record, blanks taken off."""
+        if code not in _KEPT:
+            return self._plain_tag(record, code)
         low, high = np.searchsorted(self.record_of, (record, record + 1))
         for k in range(low, high):
             if self.tags.codes[k] == code:
                 return self.data[self.tags.values[k] : self.tags.ends[k]]
         return None
 
+    def _plain_tag(self, record: int, code: int) -> bytes | None:
+        """Read a record tag by tag, up to where its lines no longer pair."""
+        try:
+            return next((p.value.strip() for p in self.pairs(record) if p.code == code), None)
+        except ValueError:
+            return None
+
     def first_tags(self, code: int) -> tuple[NDArray[np.int64], NDArray[np.int64]]:
         """Return records that hold a code, and the index of their first such tag."""
         which = np.flatnonzero(self.tags.codes == code)
-        records, first = np.unique(self.record_of[which], return_index=True)
+        records, first = np.unique(self.record_of[which].astype(np.int64), return_index=True)
         return records, which[first]
 
     @cached_property
@@ -113,6 +129,11 @@ class Scan:
             return np.empty(0, np.int64)
         inside = np.arange(entities.first + 1, entities.last)
         return inside[~np.isin(self.kinds[inside], FOLLOWERS)]
+
+    def is_head(self, record: int) -> bool:
+        """Tell whether a record begins an entity of ENTITIES."""
+        k = int(np.searchsorted(self.heads, record))
+        return k < self.heads.size and int(self.heads[k]) == record
 
     def entity_span(self, head: int) -> tuple[int, int]:
         """Return the bytes of an entity with its vertices or attributes."""
@@ -177,36 +198,6 @@ class Scan:
         """$ACADVER as written, "" where absent."""
         return (self.header_value("$ACADVER") or b"").decode("latin-1")
 
-    @cached_property
-    def has_handles(self) -> bool:
-        """Whether any entity has a handle."""
-        entities = self.section("ENTITIES")
-        if entities is None:
-            return False
-        which = (self.tags.codes == 5) & (self.tags.ends > self.tags.values)
-        records = self.record_of[which]
-        return bool(((records > entities.first) & (records < entities.last)).any())
-
-    @cached_property
-    def handles(self) -> NDArray[np.uint64]:
-        """Every value of codes 5 and 105, the header left out, that is a hexadecimal number."""
-        header = self.section("HEADER")
-        which = np.flatnonzero(np.isin(self.tags.codes, (5, 105)))
-        if header is not None:  # $HANDSEED stands at code 5 too, and is no handle in use
-            record = self.record_of[which]
-            which = which[(record < header.first) | (record > header.last)]
-        raw = texts(self.data, self.tags.values[which], self.tags.ends[which], 16)
-        grid = raw.view(np.uint8).reshape(-1, 16)
-        value = np.zeros(which.size, np.uint64)
-        good = self.tags.ends[which] - self.tags.values[which] <= 16
-        for column in grid.T:
-            digit = _HEX[column]
-            there = column != 0
-            good &= ~there | (digit < 16)
-            value = np.where(there, value * np.uint64(16) + digit, value)
-        found: NDArray[np.uint64] = value[good & (grid[:, 0] != 0)]
-        return found
-
 
 def scan(data: bytes) -> Scan:
     """Find the records and sections of a drawing.
@@ -230,9 +221,73 @@ def scan(data: bytes) -> Scan:
         )
     kinds = names(data, tags, zeros)
     starts = np.append(tags.starts[zeros], tags.stop)
-    record_of = np.searchsorted(starts[:-1], tags.starts, side="right") - 1
-    draft = Scan(data, starts, kinds, tags, record_of, (), damaged)
-    return Scan(data, starts, kinds, tags, record_of, _sections(draft), damaged)
+    record_of = np.searchsorted(starts[:-1], tags.starts, side="right").astype(np.int32) - 1
+    sections = _sections(_Draft(data, starts, kinds, tags, record_of))
+    handles, has_handles = _handles(data, tags, record_of, sections)
+    kept = np.flatnonzero(np.isin(tags.codes, _KEPT))
+    return Scan(
+        data=data,
+        starts=starts,
+        kinds=kinds,
+        tags=tags.some(kept),
+        record_of=record_of[kept],
+        handles=handles,
+        has_handles=has_handles,
+        sections=sections,
+        damaged=damaged,
+    )
+
+
+def _handles(
+    data: bytes, tags: Tags, record_of: NDArray[np.int32], sections: tuple[Block, ...]
+) -> tuple[NDArray[np.uint64], bool]:
+    """Read all handles, and tell whether an entity has one."""
+    named = {section.name: section for section in sections}
+    which = np.flatnonzero(np.isin(tags.codes, (5, 105)))
+    record = record_of[which]
+    is_entity = np.zeros(which.size, np.bool_)
+    if (entities := named.get("ENTITIES")) is not None:
+        is_entity = (record > entities.first) & (record < entities.last)
+        is_entity &= (tags.codes[which] == 5) & (tags.ends[which] > tags.values[which])
+    if (header := named.get("HEADER")) is not None:
+        # $HANDSEED stands at code 5 too, and is no handle in use.
+        which = which[(record < header.first) | (record > header.last)]
+    raw = texts(data, tags.values[which], tags.ends[which], 16)
+    grid = raw.view(np.uint8).reshape(-1, 16)
+    value = np.zeros(which.size, np.uint64)
+    good = tags.ends[which] - tags.values[which] <= 16
+    for column in grid.T:
+        digit = _HEX[column]
+        there = column != 0
+        good &= ~there | (digit < 16)
+        value = np.where(there, value * np.uint64(16) + digit, value)
+    found: NDArray[np.uint64] = value[good & (grid[:, 0] != 0)]
+    return found, bool(is_entity.any())
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class _Draft:
+    """Records before their sections are known."""
+
+    data: bytes
+    starts: NDArray[np.int64]
+    kinds: NDArray[np.bytes_]
+    tags: Tags
+    record_of: NDArray[np.int32]
+
+    def line(self, offset: int) -> int:
+        """Return the line number of a byte, counted from 1."""
+        return self.data.count(b"\n", 0, offset) + 1
+
+    def name(self, record: int) -> str:
+        """Return the first value of code 2 in a record."""
+        low, high = np.searchsorted(self.record_of, (record, record + 1))
+        which = [k for k in range(low, high) if self.tags.codes[k] == 2]
+        return (
+            self.data[self.tags.values[which[0]] : self.tags.ends[which[0]]].decode("latin-1")
+            if which
+            else ""
+        )
 
 
 def _all_tags(data: bytes, start: int) -> tuple[Tags, tuple[int, ...]]:
@@ -289,7 +344,7 @@ def _refuse_other_formats(data: bytes) -> None:
         )
 
 
-def _sections(draft: Scan) -> tuple[Block, ...]:
+def _sections(draft: _Draft) -> tuple[Block, ...]:
     """Pair SECTION with ENDSEC and check what must stand once."""
     kinds = draft.kinds
     upper = np.char.upper(kinds)
@@ -321,16 +376,16 @@ def _sections(draft: Scan) -> tuple[Block, ...]:
     return tuple(found)
 
 
-def _section_name(draft: Scan, record: int) -> str:
+def _section_name(draft: _Draft, record: int) -> str:
     """Return a section's name, refusing known ones in lower case."""
-    name = (draft.first_tag(record, 2) or b"").decode("latin-1")
+    name = draft.name(record)
     known = ("HEADER", "CLASSES", "TABLES", "BLOCKS", "ENTITIES", "OBJECTS")
     if name.upper() in known and name not in known:
         _fault(draft, int(draft.starts[record]), f"section {name} is in lower case", "lower-case")
     return name
 
 
-def _fault(draft: Scan, at: int, text: str, code: str) -> None:
+def _fault(draft: _Draft, at: int, text: str, code: str) -> None:
     """Refuse with the line number."""
     line = draft.line(at)
     msg = f"line {line}: {text}"

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import contextlib
+
 from hypothesis import given
 from hypothesis import strategies as st
 
@@ -33,13 +35,11 @@ def test_all_tags_are_those_of_the_plain_parser(data: bytes, chunk: int) -> None
     finally:
         pairs.CHUNK = old
     expected = []
-    try:
+    with contextlib.suppress(ValueError):  # the file may end after a code
         for pair in plain_pairs(data, start, len(data)):
             expected.append((pair.code, pair.start, pair.value.strip(b" \t\r")))
             if expected[-1][::2] == (0, b"EOF"):
                 break
-    except ValueError as error:
-        assert error.args[0] == "a group code without a value"  # cut after a code
     values = [data[a:b] for a, b in zip(found.values, found.ends, strict=True)]
     got = list(zip(found.codes.tolist(), found.starts.tolist(), values, strict=True))
     assert found.fault is None

@@ -1,0 +1,5 @@
+"""Run the command line with `python -m dxfcable`."""
+
+from dxfcable.cli import main
+
+main()

@@ -1,0 +1,177 @@
+"""The command line: parse, call, print, exit."""
+
+from __future__ import annotations
+
+import sys
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from dxfcable import __version__
+
+app = typer.Typer(
+    name="dxfcable",
+    help="Solve cable roofs, footbridges and crossings on the drafter's own DXF.",
+    no_args_is_help=True,
+    pretty_exceptions_enable=False,
+    rich_markup_mode=None,
+    context_settings={"help_option_names": ["-h", "--help"]},
+)
+
+Drawings = Annotated[list[Path], typer.Argument(metavar="IN.dxf...", help="Drawings to work on.")]
+Output = Annotated[
+    Path | None, typer.Option("-o", "--output", help="Result; a folder for several drawings.")
+]
+InPlace = Annotated[bool, typer.Option("--in-place", help="Write into the drawing itself.")]
+Backup = Annotated[bool, typer.Option("--backup", help="With --in-place: keep a copy beside it.")]
+AsJson = Annotated[bool, typer.Option("--json", help="One JSON document on standard output.")]
+Units = Annotated[
+    str | None, typer.Option("--units", help="Drawing unit: in, ft, us-ft, mm, cm, dm or m.")
+]
+ForceUnit = Annotated[
+    str | None, typer.Option("--force-unit", help="Unit of bare forces: lb, kip, N, kN, MN, kgf.")
+]
+SettingsFile = Annotated[
+    Path | None, typer.Option("--settings", help="The office's page; else dxfcable.toml nearby.")
+]
+PlotScale = Annotated[
+    str | None, typer.Option("--plot-scale", help='Such as 1:100 or 1/8"=1\'-0".')
+]
+
+_CAUTION = (
+    "Exit codes: 0 done, 1 done and something that an engineer must see, 2 not done, "
+    "3 a fault of dxfcable."
+)
+
+
+def _version(wanted: bool) -> None:
+    """Print the version and stop."""
+    if wanted:
+        typer.echo(f"dxfcable {__version__}")
+        raise typer.Exit
+
+
+@app.callback(epilog=_CAUTION)
+def _root(
+    version: Annotated[
+        bool, typer.Option("--version", callback=_version, is_eager=True, help="Print the version.")
+    ] = False,
+) -> None:
+    """Solve cable roofs, footbridges and crossings on the drafter's own DXF.
+
+    The drawing comes back with the cable, its force diagram and its labels on layers of their
+    own; every other byte stays as it was. Results are to be checked and approved by a
+    licensed engineer under the local code before use.
+    """
+
+
+@app.command(epilog="Example: dxfcable read roof.dxf")
+def read(
+    drawings: Drawings,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """Show what is understood of a drawing, and what is wrong with it; writes nothing."""
+    from dxfcable.commands import Asked, read_all
+
+    asked = Asked(units=units, force_unit=force_unit, settings=settings, as_json=as_json)
+    raise typer.Exit(read_all(drawings, asked))
+
+
+@app.command(
+    epilog="Examples: dxfcable solve roof.dxf -o solved.dxf; "
+    "dxfcable solve bridge.dxf --in-place --backup --sag 6.5; "
+    "dxfcable solve *.dxf -o solved/ --json"
+)
+def solve(
+    drawings: Drawings,
+    output: Output = None,
+    in_place: InPlace = False,
+    backup: Backup = False,
+    dry_run: Annotated[
+        bool, typer.Option("--dry-run", help="Solve and print, write nothing.")
+    ] = False,
+    max_tension: Annotated[str | None, typer.Option(help="Rule: largest tension anywhere.")] = None,
+    sag: Annotated[str | None, typer.Option(help="Rule: greatest drop below the string.")] = None,
+    low_point: Annotated[
+        str | None, typer.Option(help="Rule: elevation of the lowest point.")
+    ] = None,
+    pull: Annotated[str | None, typer.Option(help="Rule: horizontal component.")] = None,
+    length: Annotated[str | None, typer.Option(help="Rule: stretched length as formed.")] = None,
+    cut_length: Annotated[str | None, typer.Option(help="Rule: unstressed length.")] = None,
+    cable: Annotated[str | None, typer.Option(help="The cable that the rule is for.")] = None,
+    under: Annotated[
+        str | None, typer.Option(help='Combination to form under, as "D + L".')
+    ] = None,
+    fresh: Annotated[
+        bool, typer.Option("--fresh", help="Forget labels moved and texts edited by hand.")
+    ] = False,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    plot_scale: PlotScale = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """Form each cable and write profile, force diagram and labels into the drawing."""
+    from dxfcable.commands import Asked, Target, solve_all
+
+    rules = {
+        "max_tension": max_tension,
+        "sag": sag,
+        "low_point": low_point,
+        "pull": pull,
+        "length": length,
+        "cut_length": cut_length,
+    }
+    asked = Asked(
+        units=units,
+        force_unit=force_unit,
+        settings=settings,
+        as_json=as_json,
+        plot_scale=plot_scale,
+        rules={name: text for name, text in rules.items() if text is not None},
+        cable=cable,
+        under=under,
+        fresh=fresh,
+    )
+    target = Target(output=output, in_place=in_place, backup=backup, dry_run=dry_run)
+    raise typer.Exit(solve_all(drawings, asked, target))
+
+
+@app.command(epilog="Example: dxfcable strip solved.dxf -o original.dxf")
+def strip(
+    drawings: Drawings,
+    output: Output = None,
+    in_place: InPlace = False,
+    backup: Backup = False,
+    as_json: AsJson = False,
+) -> None:
+    """Take out all that dxfcable wrote: the drafter's file comes back byte for byte."""
+    from dxfcable.commands import Asked, Target, strip_all
+
+    target = Target(output=output, in_place=in_place, backup=backup, dry_run=False)
+    raise typer.Exit(strip_all(drawings, Asked(as_json=as_json), target))
+
+
+def main() -> None:
+    """Run the command line; a fault of our own shows its traceback and exits 3."""
+    from dxfcable.errors import DxfcableError
+
+    try:
+        app()
+    except DxfcableError as error:
+        typer.echo(f"error: {error.message} {error.remedy}".rstrip(), err=True)
+        sys.exit(2)
+    except Exception:
+        import traceback
+
+        traceback.print_exc()
+        typer.echo("This is a fault of dxfcable; the drawing was not touched.", err=True)
+        sys.exit(3)
+
+
+if __name__ == "__main__":
+    main()

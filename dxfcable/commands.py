@@ -1,0 +1,230 @@
+"""What the commands do over one drawing or many: read, work, write, print, count."""
+
+from __future__ import annotations
+
+import json
+import sys
+import traceback
+from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
+
+from dxfcable import report, safe_write
+from dxfcable.errors import DxfcableError, LayoutError
+from dxfcable.files import find_settings, read_drawing, resolve_output
+from dxfcable.job import AskedRule, Options, read_bytes, solve_pieces, strip_bytes
+from dxfcable.model import Finding, RuleKind, Severity
+
+if TYPE_CHECKING:
+    from collections.abc import Callable, Iterator, Mapping, Sequence
+    from pathlib import Path
+
+    from dxfcable.report import Json
+
+FAULT = 3
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Asked:
+    """What the command line asks, as typed."""
+
+    units: str | None = None
+    force_unit: str | None = None
+    settings: Path | None = None
+    as_json: bool = False
+    plot_scale: str | None = None
+    rules: Mapping[str, str] = field(default_factory=dict)
+    cable: str | None = None
+    under: str | None = None
+    fresh: bool = False
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Target:
+    """Where results go."""
+
+    output: Path | None = None
+    in_place: bool = False
+    backup: bool = False
+    dry_run: bool = False
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Done:
+    """One drawing done: its document, its exit code, and how to print it."""
+
+    document: Json
+    code: int
+    show: Callable[[], None]
+
+
+def read_all(drawings: Sequence[Path], asked: Asked) -> int:
+    """Show what is understood of each drawing."""
+
+    def work(drawing: Path) -> Done:
+        outcome = read_bytes(read_drawing(drawing), options(drawing, asked))
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_understood(terminal.console(), outcome)
+            terminal.show_findings(terminal.console(), outcome.findings)
+
+        document = report.understood(drawing.name, outcome)
+        return Done(document=document, code=outcome.exit_code, show=show)
+
+    return _run(drawings, asked, work)
+
+
+def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
+    """Solve each drawing and write it."""
+    _check_rules(asked)
+
+    def work(drawing: Path) -> Done:
+        output = _output(drawing, drawings, target)
+        data = read_drawing(drawing)
+        pieces, outcome = solve_pieces(data, options(drawing, asked))
+        said = _write(drawing, output, pieces, target) if output else "dry run: nothing written"
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_solved(terminal.console(), outcome)
+            terminal.show_findings(terminal.console(), outcome.findings)
+            terminal.console().print(said)
+
+        return Done(
+            document=report.solved(drawing.name, outcome), code=outcome.exit_code, show=show
+        )
+
+    return _run(drawings, asked, work)
+
+
+def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
+    """Take everything of ours out of each drawing and write it."""
+
+    def work(drawing: Path) -> Done:
+        output = _output(drawing, drawings, target)
+        assert output is not None
+        data, outcome = strip_bytes(read_drawing(drawing))
+        said = _write(drawing, output, [memoryview(data)], target)
+        count = outcome.removed
+        what = f"{count} entities taken out" if count else "nothing of ours in it: a copy"
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_findings(terminal.console(), outcome.findings)
+            terminal.console().print(f"{what}; {said}")
+
+        document = report.written(drawing.name, [str(output)], outcome.findings, removed=count)
+        return Done(document=document, code=outcome.exit_code, show=show)
+
+    return _run(drawings, asked, work)
+
+
+def options(drawing: Path, asked: Asked) -> Options:
+    """Turn what was typed into the job's options, with the settings that hold there."""
+    settings, _ = find_settings(drawing, asked.settings)
+    kinds = {kind.value: kind for kind in RuleKind}
+    rule = next(
+        (AskedRule(kind=kinds[name], text=text) for name, text in asked.rules.items()), None
+    )
+    return Options(
+        settings=settings,
+        units=asked.units,
+        force_unit=asked.force_unit,
+        plot_scale=asked.plot_scale,
+        rule=rule,
+        cable=asked.cable,
+        under=asked.under,
+        fresh=asked.fresh,
+    )
+
+
+def _check_rules(asked: Asked) -> None:
+    """Refuse two rules at once, and a cable without a rule."""
+    names = [f"--{name.replace('_', '-')}" for name in asked.rules]
+    if len(names) > 1:
+        message = f"{' and '.join(names)} are two rules; a cable obeys one"
+        raise DxfcableError(message, code="usage", remedy="Give one of them.")
+    if asked.cable is not None and not names:
+        message = f"--cable {asked.cable} says no rule for it"
+        raise DxfcableError(message, code="usage", remedy="Give a rule, such as --sag.")
+
+
+def _output(drawing: Path, drawings: Sequence[Path], target: Target) -> Path | None:
+    """Settle where one result goes, None for a dry run."""
+    if target.dry_run:
+        return None
+    return resolve_output(
+        drawing, target.output, in_place=target.in_place, is_one_of_many=len(drawings) > 1
+    )
+
+
+def _write(drawing: Path, output: Path, pieces: Sequence[memoryview], target: Target) -> str:
+    """Write a result and say what became of it."""
+    kept = ""
+    if target.in_place and target.backup:
+        kept = f"; the old one is {safe_write.backup(drawing)}"
+    if safe_write.write(output, pieces):
+        return f"written: {output}{kept}"
+    return f"unchanged: {output} holds this already{kept}"
+
+
+def _run(drawings: Sequence[Path], asked: Asked, work: Callable[[Path], Done]) -> int:
+    """Work on all drawings, each whatever became of the others; return the worst code."""
+    documents: list[Json] = []
+    worst = 0
+    for drawing in _progress(drawings, asked):
+        if len(drawings) > 1 and not asked.as_json:
+            sys.stdout.write(f"\n{drawing}\n")
+        try:
+            done = work(drawing)
+        except DxfcableError as error:
+            documents.append(_refuse(drawing, error, asked))
+            worst = max(worst, 2)
+            continue
+        except Exception:
+            if len(drawings) == 1:
+                raise
+            traceback.print_exc()
+            sys.stderr.write(f"{drawing}: this is a fault of dxfcable; it was not touched.\n")
+            documents.append(report.refused(drawing.name, ()))
+            worst = FAULT
+            continue
+        documents.append(done.document)
+        worst = max(worst, done.code)
+        if not asked.as_json:
+            done.show()
+    if asked.as_json:
+        whole = documents[0] if len(documents) == 1 else report.several(documents)
+        sys.stdout.write(json.dumps(whole, indent=1) + "\n")
+    return worst
+
+
+def _refuse(drawing: Path, error: DxfcableError, asked: Asked) -> Json:
+    """Say on standard error why a drawing was refused, and return its document."""
+    found: tuple[Finding, ...] = ()
+    if isinstance(error, LayoutError):
+        found = tuple(f for f in error.findings if isinstance(f, Finding))
+    if not any(f.severity is Severity.ERROR for f in found):
+        found = (report.error_finding(error), *found)
+    if not asked.as_json:
+        from dxfcable import terminal
+
+        out = terminal.console(is_error=True)
+        terminal.show_findings(out, found)
+        out.print(f"{drawing}: not done, nothing written")
+    return report.refused(drawing.name, found)
+
+
+def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:
+    """Yield drawings, with a bar on a terminal where there are several."""
+    if len(drawings) < 2 or asked.as_json or not sys.stderr.isatty():
+        yield from drawings
+        return
+    from rich.progress import track
+
+    from dxfcable import terminal
+
+    yield from track(drawings, "drawings", console=terminal.console(is_error=True))

@@ -1,0 +1,1 @@
+"""What the drawing says and what is written into it; knows DXF and no mechanics."""
