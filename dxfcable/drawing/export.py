@@ -23,7 +23,7 @@ from dxfcable.drawing.items import (
     TriangleItem,
     VAlign,
 )
-from dxfcable.drawing.labels import text_width
+from dxfcable.drawing.painting.labels import text_width
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Mapping, Sequence

@@ -11,29 +11,29 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from dxfcable.drawing.block_places import free_corner
-from dxfcable.drawing.diagram_block import BETWEEN, BlockMaker, arranged
-from dxfcable.drawing.elevation_labels import elevation_labels, room_above
-from dxfcable.drawing.elevation_view import View, draw_elevation, draw_span_dimensions
-from dxfcable.drawing.free_place import grid_over, grown, join
 from dxfcable.drawing.items import Painting, PlacedDiagram
-from dxfcable.drawing.label_ground import LabelGround
-from dxfcable.drawing.label_placing import put_labels
-from dxfcable.drawing.plotting import plan_plotting
-from dxfcable.drawing.schedule_text import draw_schedule
-from dxfcable.drawing.sketch import Sketch
-from dxfcable.drawing.views import join_views, rounder_of
+from dxfcable.drawing.painting.block_places import free_corner
+from dxfcable.drawing.painting.diagram_block import BETWEEN, BlockMaker, arranged
+from dxfcable.drawing.painting.elevation_labels import elevation_labels, room_above
+from dxfcable.drawing.painting.elevation_view import View, draw_elevation, draw_span_dimensions
+from dxfcable.drawing.painting.free_place import grid_over, grown, join
+from dxfcable.drawing.painting.label_ground import LabelGround
+from dxfcable.drawing.painting.label_placing import put_labels
+from dxfcable.drawing.painting.plotting import plan_plotting
+from dxfcable.drawing.painting.schedule_text import draw_schedule
+from dxfcable.drawing.painting.sketch import Sketch
+from dxfcable.drawing.painting.views import join_views, rounder_of
 from dxfcable.model import Finding, Severity
 
 if TYPE_CHECKING:
     from collections.abc import Iterable, Mapping
 
-    from dxfcable.drawing.diagram_block import Block
     from dxfcable.drawing.excerpt import Obstacles
     from dxfcable.drawing.items import Item
-    from dxfcable.drawing.plotting import Plotting
-    from dxfcable.drawing.rounding import Rounder
-    from dxfcable.drawing.sketch import Bounds
+    from dxfcable.drawing.painting.diagram_block import Block
+    from dxfcable.drawing.painting.plotting import Plotting
+    from dxfcable.drawing.painting.rounding import Rounder
+    from dxfcable.drawing.painting.sketch import Bounds
     from dxfcable.model import Layout, Point, Rectangle, Solution
     from dxfcable.settings import Settings
 

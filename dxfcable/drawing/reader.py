@@ -6,21 +6,21 @@ from dataclasses import dataclass
 from itertools import pairwise
 from typing import TYPE_CHECKING
 
-from dxfcable.drawing.anchorage import Anchorages
-from dxfcable.drawing.assemble import Forces, cable_of, support_of
 from dxfcable.drawing.codes import Code
-from dxfcable.drawing.context import Context
-from dxfcable.drawing.data import read_data
-from dxfcable.drawing.datum import read_datum
-from dxfcable.drawing.expand import expand
-from dxfcable.drawing.faults import Faults, listed
-from dxfcable.drawing.lines import read_frames, read_lines
-from dxfcable.drawing.loadowners import share_out
-from dxfcable.drawing.loadpoints import read_load_points
-from dxfcable.drawing.loadtexts import read_load_texts
-from dxfcable.drawing.strings import read_strings
-from dxfcable.drawing.supports import merging_tolerance, number_marks, read_supports
-from dxfcable.drawing.survey import (
+from dxfcable.drawing.reading.anchorage import Anchorages
+from dxfcable.drawing.reading.assemble import Forces, cable_of, support_of
+from dxfcable.drawing.reading.context import Context
+from dxfcable.drawing.reading.data import read_data
+from dxfcable.drawing.reading.datum import read_datum
+from dxfcable.drawing.reading.expand import expand
+from dxfcable.drawing.reading.faults import Faults, listed
+from dxfcable.drawing.reading.lines import read_frames, read_lines
+from dxfcable.drawing.reading.loadowners import share_out
+from dxfcable.drawing.reading.loadpoints import read_load_points
+from dxfcable.drawing.reading.loadtexts import read_load_texts
+from dxfcable.drawing.reading.strings import read_strings
+from dxfcable.drawing.reading.supports import merging_tolerance, number_marks, read_supports
+from dxfcable.drawing.reading.survey import (
     check_dimensions,
     check_plane,
     check_text_heights,
@@ -33,9 +33,9 @@ from dxfcable.model import Layout, Severity
 from dxfcable.quantities import FORCE_UNITS, Style, convert
 
 if TYPE_CHECKING:
-    from dxfcable.drawing.context import CableDraft, SupportDraft
     from dxfcable.drawing.excerpt import Excerpt
-    from dxfcable.drawing.loadpoints import LoadDraft
+    from dxfcable.drawing.reading.context import CableDraft, SupportDraft
+    from dxfcable.drawing.reading.loadpoints import LoadDraft
     from dxfcable.settings import Settings
 
 

@@ -9,7 +9,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from dxfcable.drawing.excerpt import Obstacles
-from dxfcable.drawing.free_place import OccupancyGrid, extents, grid_over
+from dxfcable.drawing.painting.free_place import OccupancyGrid, extents, grid_over
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray

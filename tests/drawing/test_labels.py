@@ -10,14 +10,14 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from dxfcable.drawing.free_place import grid_over
 from dxfcable.drawing.items import Align, LineItem, TextItem, VAlign
-from dxfcable.drawing.label_ground import Label, LabelGround
-from dxfcable.drawing.label_places import beside_line, readable_angle
-from dxfcable.drawing.label_placing import put_labels
-from dxfcable.drawing.labels import text_corners, text_width
-from dxfcable.drawing.rounding import Rounder
-from dxfcable.drawing.sketch import Sketch
+from dxfcable.drawing.painting.free_place import grid_over
+from dxfcable.drawing.painting.label_ground import Label, LabelGround
+from dxfcable.drawing.painting.label_places import beside_line, readable_angle
+from dxfcable.drawing.painting.label_placing import put_labels
+from dxfcable.drawing.painting.labels import text_corners, text_width
+from dxfcable.drawing.painting.rounding import Rounder
+from dxfcable.drawing.painting.sketch import Sketch
 
 if TYPE_CHECKING:
     from dxfcable.model import Point

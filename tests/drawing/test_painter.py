@@ -20,8 +20,8 @@ from dxfcable.drawing.items import (
     TriangleItem,
 )
 from dxfcable.drawing.painter import paint
-from dxfcable.drawing.schedule_text import CAUTION
-from dxfcable.drawing.sketch import item_points
+from dxfcable.drawing.painting.schedule_text import CAUTION
+from dxfcable.drawing.painting.sketch import item_points
 from dxfcable.model import Layout, Point, Rule, RuleKind, Solution
 from dxfcable.settings import Settings
 from tests.drawing.painter_cases import Case, Span, even, layout_of, obstacles_of

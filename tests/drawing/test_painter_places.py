@@ -9,17 +9,17 @@ import numpy as np
 import pytest
 
 from dxfcable.drawing.excerpt import Obstacles
-from dxfcable.drawing.free_place import join
 from dxfcable.drawing.items import (
     Item,
     Painting,
     PolylineItem,
     TextItem,
 )
-from dxfcable.drawing.label_ground import LabelGround
-from dxfcable.drawing.labels import text_corners
 from dxfcable.drawing.painter import paint
-from dxfcable.drawing.sketch import Bounds, item_points, strokes
+from dxfcable.drawing.painting.free_place import join
+from dxfcable.drawing.painting.label_ground import LabelGround
+from dxfcable.drawing.painting.labels import text_corners
+from dxfcable.drawing.painting.sketch import Bounds, item_points, strokes
 from dxfcable.model import Layout, Point, Rectangle, Solution
 from dxfcable.settings import Settings
 from tests.drawing.painter_cases import Case, Span, even, layout_of, obstacles_of

@@ -10,7 +10,7 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
-from dxfcable.drawing.plotting import Plotting, plan_plotting
+from dxfcable.drawing.painting.plotting import Plotting, plan_plotting
 from dxfcable.model import Layout
 from dxfcable.quantities import QuantityError
 from dxfcable.settings import Settings, Show

@@ -1,0 +1,1 @@
+"""How a solution is drawn: the rooms behind `painter`."""

@@ -1,0 +1,1 @@
+"""How a drafter's entities are understood: the rooms behind `reader`."""
