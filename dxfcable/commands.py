@@ -54,6 +54,7 @@ class Done:
 
     document: Json
     code: int
+    findings: tuple[Finding, ...]
     show: Callable[[], None]
 
 
@@ -70,7 +71,9 @@ def read_all(drawings: Sequence[Path], asked: Asked) -> int:
             terminal.show_findings(terminal.console(), outcome.findings)
 
         document = report.understood(drawing.name, outcome)
-        return Done(document=document, code=outcome.exit_code, show=show)
+        return Done(
+            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
+        )
 
     return _run(drawings, asked, work)
 
@@ -92,8 +95,9 @@ def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
             terminal.show_findings(terminal.console(), outcome.findings)
             terminal.console().print(said)
 
+        document = report.solved(drawing.name, outcome)
         return Done(
-            document=report.solved(drawing.name, outcome), code=outcome.exit_code, show=show
+            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
         )
 
     return _run(drawings, asked, work)
@@ -117,7 +121,9 @@ def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
             terminal.console().print(f"{what}; {said}")
 
         document = report.written(drawing.name, [str(output)], outcome.findings, removed=count)
-        return Done(document=document, code=outcome.exit_code, show=show)
+        return Done(
+            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
+        )
 
     return _run(drawings, asked, work)
 
@@ -194,7 +200,9 @@ def _run(drawings: Sequence[Path], asked: Asked, work: Callable[[Path], Done]) -
             continue
         documents.append(done.document)
         worst = max(worst, done.code)
-        if not asked.as_json:
+        if asked.as_json:
+            _tell(done.findings)
+        else:
             done.show()
     if asked.as_json:
         whole = documents[0] if len(documents) == 1 else report.several(documents)
@@ -209,13 +217,23 @@ def _refuse(drawing: Path, error: DxfcableError, asked: Asked) -> Json:
         found = tuple(f for f in error.findings if isinstance(f, Finding))
     if not any(f.severity is Severity.ERROR for f in found):
         found = (report.error_finding(error), *found)
-    if not asked.as_json:
+    if asked.as_json:
+        _tell(found)
+    else:
         from dxfcable import terminal
 
         out = terminal.console(is_error=True)
         terminal.show_findings(out, found)
         out.print(f"{drawing}: not done, nothing written")
     return report.refused(drawing.name, found)
+
+
+def _tell(found: Sequence[Finding]) -> None:
+    """Write what stops, and what an engineer must see, to standard error."""
+    for finding in found:
+        if finding.severity is not Severity.NOTE:
+            words = report.sentence(finding).encode("utf-8", "backslashreplace").decode("utf-8")
+            sys.stderr.write(f"{words}\n")
 
 
 def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:

@@ -98,6 +98,9 @@ def read_bytes(data: bytes, options: Options) -> Outcome:
     work = _Work(data, options)
     layout = work.layout()
     findings = (*work.stripping.findings, *layout.findings)
+    if any(f.code in _UNIT_CODES for f in layout.findings):
+        layout = replace(layout, length_unit="")  # all else was read as if there were one
+        return Outcome(findings=_unique(findings), layout=layout)
     try:
         solution = work.solution(layout)
     except LayoutError as error:
@@ -181,6 +184,7 @@ def strip_bytes(data: bytes) -> tuple[bytes, Outcome]:
     return (apply(data, stripping.changes) if stripping.changes else data), outcome
 
 
+_UNIT_CODES = frozenset({"no-units", "units-unsupported"})
 _MEMORY_CODES = frozenset({"moved", "edited"})  # of no interest to who takes everything out
 
 

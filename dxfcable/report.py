@@ -98,6 +98,19 @@ def error_finding(error: DxfcableError) -> Finding:
     )
 
 
+def sentence(found: Finding) -> str:
+    """Write one finding as a person reads it, with where it is and what to do."""
+    where = []
+    if found.line is not None:
+        where.append(f"line {found.line}")
+    if found.handle:
+        where.append(f"handle {found.handle}")
+    place = f" [{', '.join(where)}]" if where else ""
+    stop = "" if found.text.rstrip().endswith((".", "!", "?")) else "."
+    remedy = f"{stop} {found.remedy}" if found.remedy else ""
+    return f"{found.severity.value}: {found.text}{place}{remedy} ({found.code})"
+
+
 def findings(found: Sequence[Finding]) -> list[Json]:
     """Describe findings."""
     return [finding(f) for f in found]

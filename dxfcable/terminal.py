@@ -12,6 +12,7 @@ from dxfcable.job import CAUTION
 from dxfcable.lengths import format_elevation, format_length
 from dxfcable.model import Cable, Finding, FormedCable, Layout, Rule, RuleKind, Severity
 from dxfcable.quantities import format_force
+from dxfcable.report import sentence
 from dxfcable.units import FORCE_UNITS
 
 if TYPE_CHECKING:
@@ -80,19 +81,7 @@ def show_findings(out: Console, findings: Sequence[Finding]) -> None:
     for severity in (Severity.ERROR, Severity.WARNING, Severity.NOTE):
         for finding in findings:
             if finding.severity is severity:
-                out.print(Text(sentence(finding), style=_COLORS[severity]), soft_wrap=True)
-
-
-def sentence(finding: Finding) -> str:
-    """Write one finding as a person reads it, with where it is and what to do."""
-    where = []
-    if finding.line is not None:
-        where.append(f"line {finding.line}")
-    if finding.handle:
-        where.append(f"handle {finding.handle}")
-    place = f" [{', '.join(where)}]" if where else ""
-    remedy = f" {finding.remedy}" if finding.remedy else ""
-    return _safe(f"{finding.severity.value}: {finding.text}{place}{remedy} ({finding.code})")
+                out.print(Text(_safe(sentence(finding)), style=_COLORS[severity]), soft_wrap=True)
 
 
 def rule_words(rule: Rule | None, layout: Layout) -> str:
@@ -105,7 +94,9 @@ def rule_words(rule: Rule | None, layout: Layout) -> str:
     if rule.kind in _FORCE_RULES:
         return f"{name} {_force(rule.value, layout)}"
     if rule.kind is RuleKind.LOW_POINT:
-        return f"{name} {format_elevation(rule.value, layout.length_unit)}"
+        return f"{name} {_elevation(rule.value, layout)}"
+    if not layout.length_unit:
+        return f"{name} {rule.value:.6g}"
     return f"{name} {format_length(rule.value, layout.length_unit)}"
 
 

@@ -19,6 +19,8 @@ class Code(enum.StrEnum):
     FORCE_UNIT_ASSUMED = "force-unit-assumed"
     FORCE_UNITS_MIXED = "force-units-mixed"
     CODE_PAGE_UNKNOWN = "code-page-unknown"
+    TURNED_AXES = "turned-axes"
+    DAMAGED = "damaged-lines"
     LAYER_HIDDEN = "layer-hidden"
     LAYER_SPELLING = "layer-spelling"
     LAYER_VARIANT = "layer-variant"
@@ -110,6 +112,8 @@ MEANINGS: dict[str, str] = {
     Code.FORCE_UNIT_ASSUMED: "bare forces were read in the stated unit",
     Code.FORCE_UNITS_MIXED: "forces in several units were converted to the first",
     Code.CODE_PAGE_UNKNOWN: "the declared code page is not known",
+    Code.TURNED_AXES: "the user coordinate system is turned against the drawing",
+    Code.DAMAGED: "lines of the file do not pair",
     Code.LAYER_HIDDEN: "entities on layers that are off or frozen, or invisible, were not read",
     Code.LAYER_SPELLING: "a layer's name matches but for upper and lower case",
     Code.LAYER_VARIANT: "a layer's name is nearly one of ours; it was not read",

@@ -65,6 +65,10 @@ class Excerpt:
         Filled only where `entities` is empty.
     undecodable : str
         A declared code page that is not known, else "".
+    ucs_x : (float, float, float) or None
+        Direction of the user's x axis; None where the header does not say.
+    damaged : tuple of int
+        Lines where the file does not pair; reading went on behind them.
     """
 
     doc: Drawing
@@ -76,6 +80,8 @@ class Excerpt:
     passed_over: tuple[PassedOver, ...] = ()
     contents: tuple[LayerContent, ...] = ()
     undecodable: str = ""
+    ucs_x: tuple[float, float, float] | None = None
+    damaged: tuple[int, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, eq=False)

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import io
+import math
 from typing import TYPE_CHECKING
 
 import numpy as np
 from ezdxf.filemanagement import read
 
+from dxfcable.drawing.block_extents import number
 from dxfcable.drawing.bytes.cut import Cutting, Kept, cut, encoding_of
 from dxfcable.drawing.bytes.decode import decode, layer_key, unescape
 from dxfcable.drawing.excerpt import Drawn, Excerpt, LayerContent, PassedOver
@@ -56,6 +58,8 @@ def excerpt(
         passed_over=_passed_over(drawing, cutting, names),
         contents=() if entities else _contents(drawing, leave_out),
         undecodable=cutting.undecodable,
+        ucs_x=_header_point(drawing, "$UCSXDIR"),
+        damaged=tuple(drawing.line(at) for at in drawing.damaged),
     )
 
 
@@ -97,6 +101,13 @@ def _header_int(drawing: Scan, name: str) -> int | None:
         return int(raw) if raw else None
     except ValueError:
         return None
+
+
+def _header_point(drawing: Scan, name: str) -> tuple[float, float, float] | None:
+    """Read a header variable as a point, None where absent or no numbers."""
+    found = {pair.code: number(pair.value) for pair in drawing.header.get(name, ())}
+    x, y, z = (found.get(code, math.nan) for code in (10, 20, 30))
+    return (x, y, z) if math.isfinite(x + y + z) else None
 
 
 def _passed_over(drawing: Scan, cutting: Cutting, names: frozenset[str]) -> tuple[PassedOver, ...]:

@@ -45,6 +45,7 @@ _LATER = {
     "plan_point": (Code.LATER_PLAN, "hanger points of a framing plan are"),
     "hold_down": (Code.LATER_HOLD_DOWN, "hold-down cables are"),
 }
+_TURNED = 1e-6
 _FEET_AND_INCHES = frozenset({3, 4})  # $LUNITS engineering and architectural: a unit is an inch
 
 
@@ -95,10 +96,16 @@ def read_unit(excerpt: Excerpt, wanted: str | None, faults: Faults) -> str:
 
 
 def tell_passed_over(excerpt: Excerpt, settings: Settings, faults: Faults) -> None:
-    """Tell paper space, external references and unknown code pages."""
+    """Tell what is odd about the file, paper space, external references."""
     if excerpt.undecodable:
         text = f"code page {excerpt.undecodable} is not known: texts may be garbled"
         faults.note(Code.CODE_PAGE_UNKNOWN, text)
+    if excerpt.ucs_x is not None and abs(excerpt.ucs_x[1]) + abs(excerpt.ucs_x[2]) > _TURNED:
+        text = "the user's coordinate system is turned: loads act along the drawing's own Y"
+        faults.note(Code.TURNED_AXES, text, "Check that the elevation stands upright in world axes.")
+    for line in excerpt.damaged:
+        text = f"line {line}: here the file does not pair, as if a line was lost or added"
+        faults.note(Code.DAMAGED, text, "Audit the drawing in the CAD program.")
     paper: Counter[str] = Counter()
     for passed in excerpt.passed_over:
         parent, bar, name = passed.layer.rpartition("|")
