@@ -66,19 +66,41 @@ def _root(
     """
 
 
-@app.command(epilog="Example: dxfcable read roof.dxf")
+@app.command(
+    epilog="Examples: dxfcable starter office.dxf --units m; "
+    "dxfcable starter office.dxf --units ft --settings dxfcable.toml"
+)
+def starter(
+    output: Annotated[Path, typer.Argument(metavar="OUT.dxf", help="The drawing to write.")],
+    units: Annotated[str, typer.Option("--units", help="Drawing unit: ft, in, m or mm.")],
+    settings: Annotated[
+        Path | None, typer.Option("--settings", help="Write the office's page here, with defaults.")
+    ] = None,
+    as_json: AsJson = False,
+) -> None:
+    """Write a starter drawing: layers, blocks, and one worked cable."""
+    from dxfcable.commands import make_starter
+
+    raise typer.Exit(make_starter(output, units, settings, as_json=as_json))
+
+
+@app.command(epilog="Examples: dxfcable read roof.dxf; dxfcable read roof.dxf --loads loads.csv")
 def read(
     drawings: Drawings,
+    loads: Annotated[
+        Path | None,
+        typer.Option("--loads", help="Write the load table here, to fill and hand back."),
+    ] = None,
     units: Units = None,
     force_unit: ForceUnit = None,
     settings: SettingsFile = None,
     as_json: AsJson = False,
 ) -> None:
-    """Show what is understood of a drawing, and what is wrong with it; writes nothing."""
-    from dxfcable.commands import Asked, read_all
+    """Show what is understood of a drawing, and what is wrong with it; the drawing stays."""
+    from dxfcable.commands import Asked, Extras, read_all
 
     asked = Asked(units=units, force_unit=force_unit, settings=settings, as_json=as_json)
-    raise typer.Exit(read_all(drawings, asked))
+    raise typer.Exit(read_all(drawings, asked, Extras(loads=loads)))
 
 
 @app.command(
@@ -105,6 +127,9 @@ def solve(
     cable: Annotated[str | None, typer.Option(help="The cable that the rule is for.")] = None,
     under: Annotated[
         str | None, typer.Option(help='Combination to form under, as "D + L".')
+    ] = None,
+    loads: Annotated[
+        Path | None, typer.Option("--loads", help="Load table (CSV) that overrules the drawing.")
     ] = None,
     fresh: Annotated[
         bool, typer.Option("--fresh", help="Forget labels moved and texts edited by hand.")
@@ -135,6 +160,7 @@ def solve(
         rules={name: text for name, text in rules.items() if text is not None},
         cable=cable,
         under=under,
+        loads=loads,
         fresh=fresh,
     )
     target = Target(output=output, in_place=in_place, backup=backup, dry_run=dry_run)

@@ -10,7 +10,7 @@ from typing import TYPE_CHECKING
 
 from dxfcable import report, safe_write
 from dxfcable.errors import DxfcableError, LayoutError
-from dxfcable.files import find_settings, read_drawing, resolve_output
+from dxfcable.files import find_settings, read_drawing, read_table, resolve_output
 from dxfcable.job import AskedRule, Options, read_bytes, solve_pieces, strip_bytes
 from dxfcable.model import Finding, RuleKind, Severity
 
@@ -35,6 +35,7 @@ class Asked:
     rules: Mapping[str, str] = field(default_factory=dict)
     cable: str | None = None
     under: str | None = None
+    loads: Path | None = None
     fresh: bool = False
 
 
@@ -58,22 +59,39 @@ class Done:
     show: Callable[[], None]
 
 
-def read_all(drawings: Sequence[Path], asked: Asked) -> int:
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Extras:
+    """What `read` may write beside what it shows."""
+
+    loads: Path | None = None
+
+
+def read_all(drawings: Sequence[Path], asked: Asked, extras: Extras) -> int:
     """Show what is understood of each drawing."""
+    if extras.loads is not None and len(drawings) > 1:
+        message = "--loads takes one drawing at a time"
+        raise DxfcableError(message, code="usage", remedy="Read the drawings one by one.")
 
     def work(drawing: Path) -> Done:
-        outcome = read_bytes(read_drawing(drawing), options(drawing, asked))
+        chosen = options(drawing, asked)
+        outcome = read_bytes(read_drawing(drawing), chosen)
+        said = []
+        if extras.loads is not None and outcome.layout is not None:
+            from dxfcable import load_table
+
+            text = load_table.write(outcome.layout, chosen.settings)
+            said.append(_write_beside(extras.loads, text.encode("utf-8")))
 
         def show() -> None:
             from dxfcable import terminal
 
             terminal.show_understood(terminal.console(), outcome)
             terminal.show_findings(terminal.console(), outcome.findings)
+            for line in said:
+                terminal.console().print(line)
 
         document = report.understood(drawing.name, outcome)
-        return Done(
-            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
-        )
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return _run(drawings, asked, work)
 
@@ -96,9 +114,7 @@ def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
             terminal.console().print(said)
 
         document = report.solved(drawing.name, outcome)
-        return Done(
-            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
-        )
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return _run(drawings, asked, work)
 
@@ -121,11 +137,38 @@ def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
             terminal.console().print(f"{what}; {said}")
 
         document = report.written(drawing.name, [str(output)], outcome.findings, removed=count)
-        return Done(
-            document=document, code=outcome.exit_code, findings=outcome.findings, show=show
-        )
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return _run(drawings, asked, work)
+
+
+def make_starter(output: Path, units: str, settings: Path | None, *, as_json: bool) -> int:
+    """Write a starter drawing, and the office's page where asked for."""
+    from dxfcable.drawing.starter import starter
+    from dxfcable.settings import default_page
+
+    office, _ = find_settings(output, None)
+    said = [_write_beside(output, starter(units, office))]
+    paths = [str(output)]
+    if settings is not None:
+        if settings.exists():
+            message = f"{settings} stands already"
+            raise DxfcableError(message, code="output", remedy="Name a new file for the page.")
+        said.append(_write_beside(settings, default_page().encode("utf-8")))
+        paths.append(str(settings))
+    if as_json:
+        document = report.written(output.name, paths, ())
+        sys.stdout.write(json.dumps(document, indent=1) + "\n")
+    else:
+        sys.stdout.write("\n".join([*said, f"next: dxfcable solve {output} -o solved.dxf"]) + "\n")
+    return 0
+
+
+def _write_beside(path: Path, content: bytes) -> str:
+    """Write a file of ours and say what became of it."""
+    if safe_write.write(path, [content]):
+        return f"written: {path}"
+    return f"unchanged: {path} holds this already"
 
 
 def options(drawing: Path, asked: Asked) -> Options:
@@ -143,6 +186,7 @@ def options(drawing: Path, asked: Asked) -> Options:
         rule=rule,
         cable=asked.cable,
         under=asked.under,
+        loads=read_table(asked.loads) if asked.loads else None,
         fresh=asked.fresh,
     )
 

@@ -60,6 +60,23 @@ def read_drawing(path: Path) -> bytes:
         raise DxfcableError(message, code="input", remedy="Check the path.") from error
 
 
+def read_table(path: Path) -> str:
+    """Read a load table.
+
+    Raises
+    ------
+    DxfcableError
+        Where there is no such file, or it is no text.
+    """
+    try:
+        return read_drawing(path).decode("utf-8-sig")
+    except UnicodeDecodeError as error:
+        message = f"{path} is no text in UTF-8"
+        raise DxfcableError(
+            message, code="input", remedy="Save the table as CSV, UTF-8."
+        ) from error
+
+
 def resolve_output(
     drawing: Path, output: Path | None, *, in_place: bool, is_one_of_many: bool
 ) -> Path:

@@ -53,6 +53,8 @@ class Options:
         A governing rule for cables that have none; with `cable` for that one, whatever it has.
     under : str or None
         Combination to form under.
+    loads : str or None
+        Text of a load table that overrules loads of the drawing.
     fresh : bool
         Forget what the drafter moved or edited among our entities.
     """
@@ -64,6 +66,7 @@ class Options:
     rule: AskedRule | None = None
     cable: str | None = None
     under: str | None = None
+    loads: str | None = None
     fresh: bool = False
 
 
@@ -208,7 +211,21 @@ class _Work:
         names = [settings.layers.name(role) for role in settings.layers.input_roles()]
         cut_out = excerpt(self._drawing, names, self.stripping.own_heads)
         wanted = ReadOptions(units=self._options.units, force_unit=self._options.force_unit)
-        return read(cut_out, settings, wanted)
+        layout = read(cut_out, settings, wanted)
+        return layout if self._options.loads is None else self._with_loads(layout)
+
+    def _with_loads(self, layout: Layout) -> Layout:
+        """Put the values of a load table into the layout."""
+        from dxfcable import load_table
+
+        options = self._options
+        assert options.loads is not None
+        try:
+            table = load_table.read(options.loads, layout, options.settings, options.force_unit)
+        except LayoutError as error:
+            everything = _unique((*layout.findings, *_findings(error)))
+            raise LayoutError(error.message, everything) from error
+        return load_table.apply(layout, table)
 
     def solution(self, layout: Layout) -> Solution:
         """Form the cables, unless reading found a fault: then refuse with all of them."""

@@ -28,12 +28,13 @@ _AT_ONCE = 8192
 _NUMBER_WIDTH = 24
 _NAME_WIDTH = 64
 _PLACE = (10, 11, 20, 21)
-_FACTS = (40, 41, 42, 50, 72)
+_FACTS = (40, 41, 42, 50, 70, 72)
 _WORD = (1, 3)
 _CODES = (2, *_PLACE, *_FACTS, *_WORD)
 _JOINED = (b"LINE", b"LWPOLYLINE", b"POLYLINE", b"SPLINE", b"LEADER", b"MLINE")
 _ROUND = (b"CIRCLE", b"ARC")
-_TEXTS = (b"TEXT", b"MTEXT", b"ATTDEF")
+_CLOSABLE = (b"LWPOLYLINE", b"POLYLINE")
+_TEXTS = (b"TEXT", b"MTEXT", b"ATTDEF", b"ATTRIB")
 _NO_PLACE = (b"POLYLINE", b"HATCH", b"VIEWPORT", b"SEQEND")  # their 10/20 is no point of theirs
 _ENDLESS = (b"RAY", b"XLINE")  # their 11/21 is a direction
 _WIDTH = 0.9  # of the height a character, generous
@@ -98,6 +99,12 @@ class _Batch:
         return self.heads[np.isin(self.kinds[self.heads], kinds)]
 
 
+    def texts(self) -> NDArray[np.int64]:
+        """Return the records of texts, attributes of inserts among them."""
+        records = np.unique(self.record[np.isin(self.head, self.heads)])
+        return records[np.isin(self.kinds[records], _TEXTS)]
+
+
 def _batches(drawing: Scan) -> Iterator[_Batch]:
     """Part the model-space entities."""
     paper = _in_paper_space(drawing)
@@ -148,7 +155,19 @@ def _segments(batch: _Batch) -> Floats:
     joined = (head[:-1] == head[1:]) & is_line[:-1]
     lines = np.column_stack([x[:-1], y[:-1], x[1:], y[1:]])[joined]
     dots = np.column_stack([x, y, x, y])[~is_line]
-    return np.concatenate([lines, dots])
+    return np.concatenate([lines, dots, _closing_sides(batch, head, x, y)])
+
+
+def _closing_sides(batch: _Batch, head: NDArray[np.int64], x: Floats, y: Floats) -> Floats:
+    """Return the last side of closed polylines, whose points are given."""
+    closable = batch.of_kind(_CLOSABLE)
+    flags = np.nan_to_num(batch.first(closable, 70, 0.0)).astype(np.int64)
+    closed = closable[(flags & 1) == 1]
+    first = np.searchsorted(head, closed, side="left")
+    last = np.searchsorted(head, closed, side="right") - 1
+    has = last > first
+    first, last = first[has], last[has]
+    return np.column_stack([x[last], y[last], x[first], y[first]])
 
 
 def _circles(batch: _Batch) -> Floats:
@@ -161,7 +180,7 @@ def _circles(batch: _Batch) -> Floats:
 
 def _words(batch: _Batch) -> Floats:
     """Return generous boxes: TEXT by its alignment, MTEXT to all sides of its point."""
-    heads = batch.of_kind(_TEXTS)
+    heads = batch.texts()
     length, lines = np.zeros(heads.size), np.ones(heads.size)
     is_word = np.isin(batch.tags.codes, _WORD) & np.isin(batch.record, heads)
     slots = np.searchsorted(heads, batch.record)

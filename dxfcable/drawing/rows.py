@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.block_extents import number
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import decode, escape, layer_key
 from dxfcable.drawing.bytes.splice import Change, line_end_of
@@ -147,7 +148,7 @@ class _Plan:
         """Return the name of the chain linetype, "" where the file has no linetype table."""
         if self._drawing.table("LTYPE") is None:
             return ""
-        lengths = [length * scale for length in _CHAIN_PATTERN]
+        lengths = [length * scale / self._linetype_scale() for length in _CHAIN_PATTERN]
         tags: list[Tag] = [
             (2, CHAIN),
             (70, 0),
@@ -162,6 +163,11 @@ class _Plan:
                 tags.append((74, 0))
         self.row("LTYPE", CHAIN, tags)
         return CHAIN
+
+    def _linetype_scale(self) -> float:
+        """Return $LTSCALE, by which CAD programs stretch every pattern."""
+        stated = number(self._drawing.header_value("$LTSCALE") or b"1")
+        return stated if stated > 0.0 else 1.0
 
     def text_style(self, wanted: str) -> str:
         """Return the office's text style where the file has it, else our own."""
