@@ -16,6 +16,7 @@ import numpy as np
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import decode
 from dxfcable.drawing.dialect import APPID
+from dxfcable.drawing.rows import CHAIN
 from dxfcable.drawing.export import text_sum
 
 if TYPE_CHECKING:
@@ -44,6 +45,8 @@ class Marked:
         Where it was put; `place` is where it stands now.
     text : str
         Its text now, "" for other kinds; `text_was_edited` compares it with the mark.
+    is_restyled : bool
+        It has a colour, weight, scale or linetype of its own, which we never give.
     record_lines : tuple of str
         The part of the record that it carries.
     """
@@ -60,6 +63,7 @@ class Marked:
     height: float
     text: str
     text_was_edited: bool
+    is_restyled: bool
     record_lines: tuple[str, ...]
 
     @property
@@ -153,6 +157,7 @@ def _read(drawing: Scan, record: int) -> Marked | None:
         height=next((_float(p.value) for p in own if p.code == 40), 0.0),
         text=text,
         text_was_edited=expected is not None and text_sum(text) != expected,
+        is_restyled=_is_restyled(own),
         record_lines=tuple(s for s in strings if s.startswith("record=")),
     )
 
@@ -170,6 +175,23 @@ def _split(tags: list[Pair]) -> tuple[list[Pair], list[Pair]]:
             target = own
         target.append(pair)
     return own, marked
+
+
+def _is_restyled(own: list[Pair]) -> bool:
+    """Tell whether something was set that we leave to the layer."""
+    values = {pair.code: pair.value.strip() for pair in own}
+    plain = {62: b"256", 6: b"BYLAYER", 370: b"-1", 48: b"1", 420: b"", 60: b"0"}
+    chain = CHAIN.encode("ascii")
+    return any(
+        values[code].upper() not in (usual, chain) and not _is_number(values[code], usual)
+        for code, usual in plain.items()
+        if code in values
+    )
+
+
+def _is_number(value: bytes, usual: bytes) -> bool:
+    """Tell whether two values are the same number."""
+    return bool(usual) and _float(value) == _float(usual)
 
 
 def _place(tags: list[Pair]) -> Point:

@@ -77,6 +77,15 @@ def plan_strip(drawing: Scan) -> Stripping:
                 "made are left in the drawing",
             )
         )
+    if found.ours and drawing.has_handles and not any(m.is_by_handle for m in found.ours):
+        findings.append(
+            Finding(
+                code="adopted",
+                severity=Severity.NOTE,
+                text=f"{len(found.ours)} entities carry marks that another drawing gave, or this "
+                "one before its handles were renumbered; they are taken as ours",
+            )
+        )
     changes = [Change(*m.span) for m in found.ours]
     own_records = _records_of(drawing, found.ours)
     row_changes, staying, row_findings = _rows(drawing, facts.opened, own_records)
@@ -207,6 +216,9 @@ def _memory(
             places[marked.id] = marked.place
             text = f"label {marked.id} was moved and stays there"
             findings.append(_memory_note(drawing, marked, "moved", text))
+        if marked.is_restyled:
+            text = f"{marked.id} has a look of its own; a solve sets colour, weight and line again"
+            findings.append(_memory_note(drawing, marked, "restyled", text))
         if marked.text_was_edited:
             texts[marked.id] = plain(marked.text)
             text = f'{marked.id} was edited by hand to "{plain(marked.text)}" and is kept'

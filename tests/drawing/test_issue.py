@@ -12,6 +12,7 @@ from hypothesis import strategies as st
 
 from dxfcable.drawing.bytes.scan import scan
 from dxfcable.drawing.marks import sort_marked
+from dxfcable.drawing.strip import plan_strip
 from tests.drawing.issuing import ITEMS, issued, stripped
 from tests.generated import (
     BROKEN_FOR_EZDXF,
@@ -150,3 +151,42 @@ def test_what_is_inserted_does_not_grow_with_the_file(version: str) -> None:
     small, large = (drawing(version, seed=2, entities=n) for n in (3, 60))
     growth = [len(issued(data)) - len(data) for data in (small, large)]
     assert abs(growth[1] - growth[0]) < 200  # longer handles
+
+
+def test_an_entity_that_the_drafter_points_at_keeps_its_handle() -> None:
+    data = drawing("AC1015", seed=1)
+    solved = issued(data)
+    ray = next(m for m in sort_marked(scan(solved)).ours if m.id == "C1/ray/1")
+    group = b"  0\nGROUP\n  5\nFFF2\n340\n" + ray.handles[0].encode() + b"\n"
+    end = solved.index(b"OBJECTS\n") + len(b"OBJECTS\n")
+    pointed = solved[:end] + group + solved[end:]
+    again = issued(pointed, tuple(reversed(ITEMS)))
+    kept = next(m for m in sort_marked(scan(again)).ours if m.id == "C1/ray/1")
+    assert kept.handles == ray.handles
+    assert len({m.handles for m in sort_marked(scan(again)).ours}) == len(ITEMS)
+    assert issued(again, tuple(reversed(ITEMS))) == again
+    assert "pointed-at" in {f.code for f in plan_strip(scan(pointed)).findings}
+    assert (
+        stripped(again)
+        == data[: data.index(b"OBJECTS\n") + 8] + group + data[data.index(b"OBJECTS\n") + 8 :]
+    )
+
+
+def test_a_set_pasted_from_another_drawing_is_adopted_and_said() -> None:
+    source = issued(drawing("AC1015", seed=1))
+    ours = b"".join(source[slice(*m.span)] for m in sort_marked(scan(source)).ours)
+    target = drawing("AC1015", seed=9)
+    end = target.index(b"ENTITIES\n") + len(b"ENTITIES\n")
+    pasted = target[:end] + ours + target[end:]
+    pasted = renumber_handles(pasted, 0x5000)
+    assert "adopted" in {f.code for f in plan_strip(scan(pasted)).findings}
+    assert renumber_handles(stripped(pasted), 0x10) == renumber_handles(target, 0x10)
+
+
+def test_a_look_that_the_drafter_gave_is_said() -> None:
+    solved = issued(drawing("AC1015", seed=1))
+    red = solved.replace(b"  8\nS-CABL-TENS\n", b"  8\nS-CABL-TENS\n 62\n1\n")
+    codes = [f.code for f in plan_strip(scan(red)).findings]
+    assert codes.count("restyled") == 1
+    assert "restyled" not in {f.code for f in plan_strip(scan(solved)).findings}
+    assert issued(red) == solved
