@@ -79,7 +79,7 @@ def starter(
     as_json: AsJson = False,
 ) -> None:
     """Write a starter drawing: layers, blocks, and one worked cable."""
-    from dxfcable.commands import make_starter
+    from dxfcable.commands.making import make_starter
 
     raise typer.Exit(make_starter(output, units, settings, as_json=as_json))
 
@@ -91,16 +91,20 @@ def read(
         Path | None,
         typer.Option("--loads", help="Write the load table here, to fill and hand back."),
     ] = None,
+    picture: Annotated[
+        Path | None, typer.Option("--picture", help="Write an SVG: which text went to which point.")
+    ] = None,
     units: Units = None,
     force_unit: ForceUnit = None,
     settings: SettingsFile = None,
     as_json: AsJson = False,
 ) -> None:
     """Show what is understood of a drawing, and what is wrong with it; the drawing stays."""
-    from dxfcable.commands import Asked, Extras, read_all
+    from dxfcable.commands.reading import Extras, read_all
+    from dxfcable.commands.running import Asked
 
     asked = Asked(units=units, force_unit=force_unit, settings=settings, as_json=as_json)
-    raise typer.Exit(read_all(drawings, asked, Extras(loads=loads)))
+    raise typer.Exit(read_all(drawings, asked, Extras(loads=loads, picture=picture)))
 
 
 @app.command(
@@ -141,7 +145,8 @@ def solve(
     as_json: AsJson = False,
 ) -> None:
     """Form each cable and write profile, force diagram and labels into the drawing."""
-    from dxfcable.commands import Asked, Target, solve_all
+    from dxfcable.commands.running import Asked, Target
+    from dxfcable.commands.solving import solve_all
 
     rules = {
         "max_tension": max_tension,
@@ -167,6 +172,27 @@ def solve(
     raise typer.Exit(solve_all(drawings, asked, target))
 
 
+@app.command(
+    epilog="Examples: dxfcable picture solved.dxf -o solved.pdf; "
+    "dxfcable picture sheet.dxf -o sheet.png --layout A1"
+)
+def picture(
+    drawing: Annotated[Path, typer.Argument(metavar="ANY.dxf", help="The drawing to picture.")],
+    output: Annotated[Path, typer.Option("-o", "--output", help="A .svg, .png or .pdf file.")],
+    layout: Annotated[
+        str | None, typer.Option("--layout", help="A paper-space layout; else model space.")
+    ] = None,
+    size: Annotated[int, typer.Option("--size", help="Longer side of a PNG in pixels.")] = 1600,
+    as_json: AsJson = False,
+) -> None:
+    """Make a picture of a drawing as it is drawn."""
+    from dxfcable.commands.making import picture_one
+    from dxfcable.commands.running import Asked
+
+    asked = Asked(as_json=as_json)
+    raise typer.Exit(picture_one(drawing, output, asked, layout=layout, size=size))
+
+
 @app.command(epilog="Example: dxfcable strip solved.dxf -o original.dxf")
 def strip(
     drawings: Drawings,
@@ -176,7 +202,8 @@ def strip(
     as_json: AsJson = False,
 ) -> None:
     """Take out all that dxfcable wrote: the drafter's file comes back byte for byte."""
-    from dxfcable.commands import Asked, Target, strip_all
+    from dxfcable.commands.running import Asked, Target
+    from dxfcable.commands.solving import strip_all
 
     target = Target(output=output, in_place=in_place, backup=backup, dry_run=False)
     raise typer.Exit(strip_all(drawings, Asked(as_json=as_json), target))
@@ -189,7 +216,9 @@ def main() -> None:
     try:
         app()
     except DxfcableError as error:
-        typer.echo(f"error: {error.message} {error.remedy}".rstrip(), err=True)
+        from dxfcable.report import error_finding, sentence
+
+        typer.echo(sentence(error_finding(error)), err=True)
         sys.exit(2)
     except Exception:
         import traceback

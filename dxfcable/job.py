@@ -188,7 +188,9 @@ def strip_bytes(data: bytes) -> tuple[bytes, Outcome]:
 
 
 _UNIT_CODES = frozenset({"no-units", "units-unsupported"})
-_MEMORY_CODES = frozenset({"moved", "edited", "restyled"})  # of no interest to who takes everything out
+_MEMORY_CODES = frozenset(
+    {"moved", "edited", "restyled"}
+)  # of no interest to who takes everything out
 
 
 class _Work:

@@ -293,7 +293,7 @@ def test_a_changed_load_is_solved_anew(bridge: Path, tmp_path: Path) -> None:
 
 def test_a_fault_of_our_own_shows_its_traceback_and_exits_3() -> None:
     code = (
-        "import dxfcable.commands as c, dxfcable.cli as cli, sys\n"
+        "import dxfcable.commands.reading as c, dxfcable.cli as cli, sys\n"
         "def broken(*_): raise ZeroDivisionError('planted')\n"
         "c.read_all = broken\nsys.argv = ['dxfcable', 'read', 'x.dxf']\ncli.main()"
     )

@@ -7,9 +7,9 @@ from typing import TYPE_CHECKING
 
 from ezdxf._options import options
 
-from dxfcable.drawing.starter_blocks import add_blocks
-from dxfcable.drawing.starter_board import new_board
-from dxfcable.drawing.starter_example import Example
+from dxfcable.drawing.starting.starter_blocks import add_blocks
+from dxfcable.drawing.starting.starter_board import new_board
+from dxfcable.drawing.starting.starter_example import Example
 from dxfcable.errors import DxfcableError
 
 if TYPE_CHECKING:

@@ -17,7 +17,7 @@ from dxfcable.quantities import format_elevation, format_length
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from dxfcable.drawing.starter_board import Board
+    from dxfcable.drawing.starting.starter_board import Board
     from dxfcable.model import Point
     from dxfcable.settings import Settings
 

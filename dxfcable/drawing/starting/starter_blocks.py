@@ -13,7 +13,7 @@ if TYPE_CHECKING:
 
     from ezdxf.layouts.blocklayout import BlockLayout
 
-    from dxfcable.drawing.starter_board import Board
+    from dxfcable.drawing.starting.starter_board import Board
     from dxfcable.model import Point
     from dxfcable.settings import Settings
 

@@ -1,0 +1,1 @@
+"""What each command does, apart from how it is typed."""

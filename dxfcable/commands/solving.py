@@ -1,0 +1,82 @@
+"""`solve` and `strip`: our layers written into drawings, and taken out again."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from dxfcable import report
+from dxfcable.commands.running import (
+    Asked,
+    Done,
+    Target,
+    options,
+    result_path,
+    run_over,
+    write_result,
+)
+from dxfcable.errors import DxfcableError
+from dxfcable.files import read_drawing
+from dxfcable.job import solve_pieces, strip_bytes
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+    from pathlib import Path
+
+
+def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
+    """Solve each drawing and write it."""
+    _check_rules(asked)
+
+    def work(drawing: Path) -> Done:
+        output = result_path(drawing, drawings, target)
+        data = read_drawing(drawing)
+        pieces, outcome = solve_pieces(data, options(drawing, asked))
+        said = (
+            write_result(drawing, output, pieces, target) if output else "dry run: nothing written"
+        )
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_solved(terminal.console(), outcome)
+            terminal.show_findings(terminal.console(), outcome.findings)
+            terminal.console().print(said)
+
+        document = report.solved(drawing.name, outcome)
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
+
+    return run_over(drawings, asked, work)
+
+
+def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
+    """Take everything of ours out of each drawing and write it."""
+
+    def work(drawing: Path) -> Done:
+        output = result_path(drawing, drawings, target)
+        assert output is not None
+        data, outcome = strip_bytes(read_drawing(drawing))
+        said = write_result(drawing, output, [memoryview(data)], target)
+        count = outcome.removed
+        what = f"{count} entities taken out" if count else "nothing of ours in it: a copy"
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_findings(terminal.console(), outcome.findings)
+            terminal.console().print(f"{what}; {said}")
+
+        document = report.written(drawing.name, [str(output)], outcome.findings, removed=count)
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
+
+    return run_over(drawings, asked, work)
+
+
+def _check_rules(asked: Asked) -> None:
+    """Refuse two rules at once, and a cable without a rule."""
+    names = [f"--{name.replace('_', '-')}" for name in asked.rules]
+    if len(names) > 1:
+        message = f"{' and '.join(names)} are two rules; a cable obeys one"
+        raise DxfcableError(message, code="usage", remedy="Give one of them.")
+    if asked.cable is not None and not names:
+        message = f"--cable {asked.cable} says no rule for it"
+        raise DxfcableError(message, code="usage", remedy="Give a rule, such as --sag.")

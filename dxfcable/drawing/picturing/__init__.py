@@ -1,0 +1,1 @@
+"""How any drawing is pictured, and what was understood laid over it."""
