@@ -28,6 +28,7 @@ from dxfcable.model import (
     Node,
     Reaction,
     Rule,
+    RuleKind,
     Segment,
     Severity,
     Solution,
@@ -48,6 +49,7 @@ if TYPE_CHECKING:
 
 __all__ = ["Forming", "solve"]
 
+_EXACT = 6  # digits, where a bound is shown
 _REFUSED = "the drawing cannot be solved as it is"
 
 
@@ -117,10 +119,25 @@ def _form(
     try:
         shape = form(x, loads, *ends, rule.kind, value, point=rule.point, ea=cable.ea)
     except (RuleError, ValueError) as error:
-        remarks.stop("rule", f"cable {cable.mark}: {error}", origin=rule.origin, raw=rule.text)
+        text = f"cable {cable.mark}: {_refusal(layout, rule, error)}"
+        remarks.stop("rule", text, origin=rule.origin, raw=rule.text)
         return None
     _remark(layout, cable, shape, settings, remarks)
     return _gather(layout, cable, rule, combination, shape, settings, remarks)
+
+
+def _refusal(layout: Layout, rule: Rule, error: Exception) -> str:
+    """Say why a rule cannot be met, the least tension with its unit."""
+    least = getattr(error, "least", None)
+    if rule.kind is not RuleKind.MAX_TENSION or least is None:
+        words = str(error).rstrip(".")
+        return f"{words} (forces in {layout.force_unit}, lengths in {layout.length_unit})"
+    more = "more than " if getattr(error, "is_limit", False) else ""
+    unit = layout.force_unit or ""
+    return (
+        f"MAX_TENSION {format_force(rule.value, unit, _EXACT)} cannot be met: the least tension "
+        f"possible under these loads is {more}{format_force(least, unit, _EXACT)}"
+    )
 
 
 def _gather(

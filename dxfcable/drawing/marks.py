@@ -16,8 +16,8 @@ import numpy as np
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import decode
 from dxfcable.drawing.dialect import APPID
-from dxfcable.drawing.rows import CHAIN
 from dxfcable.drawing.export import text_sum
+from dxfcable.drawing.rows import CHAIN
 
 if TYPE_CHECKING:
     from dxfcable.drawing.bytes.pairs import Pair

@@ -98,7 +98,6 @@ class _Batch:
         """Return the heads of some types."""
         return self.heads[np.isin(self.kinds[self.heads], kinds)]
 
-
     def texts(self) -> NDArray[np.int64]:
         """Return the records of texts, attributes of inserts among them."""
         records = np.unique(self.record[np.isin(self.head, self.heads)])

@@ -5,10 +5,10 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 from xml.etree import ElementTree as ET
 
+from dxfcable.drawing.picture import require
 from dxfcable.drawing.picturing.overlay_legend import draw_legend
 from dxfcable.drawing.picturing.overlay_marks import Box, Labels, Marks
 from dxfcable.drawing.picturing.overlay_understood import STYLE, Understood, is_place
-from dxfcable.drawing.picture import require
 from dxfcable.drawing.picturing.picture_load import load
 
 if TYPE_CHECKING:

@@ -3,17 +3,19 @@
 from __future__ import annotations
 
 import io
+from typing import TYPE_CHECKING
 
 import numpy as np
 import pytest
 from ezdxf.filemanagement import new
 from hypothesis import given
-from hypothesis import strategies as st
 
 from dxfcable.drawing.bytes.scan import scan
-from dxfcable.drawing.excerpt import Obstacles
 from dxfcable.drawing.obstacles import obstacles
 from tests.generated import drawings
+
+if TYPE_CHECKING:
+    from dxfcable.drawing.excerpt import Obstacles
 
 
 def found(draw: object) -> Obstacles:

@@ -4,9 +4,9 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.painting.labels import text_width
 from dxfcable.drawing.picturing.overlay_marks import clean
 from dxfcable.drawing.picturing.overlay_understood import SIGNS, anchors_of, draw_sign
-from dxfcable.drawing.painting.labels import text_width
 from dxfcable.model import Severity
 
 if TYPE_CHECKING:

@@ -13,8 +13,8 @@ from ezdxf.entities.insert import Insert
 from ezdxf.entities.mtext import MText
 from ezdxf.entities.text import Text
 
-from dxfcable.drawing.reading import texts
 from dxfcable.drawing.codes import Code
+from dxfcable.drawing.reading import texts
 from dxfcable.drawing.reading.blocks import attributes, extent, symbol_size, true_name
 from dxfcable.drawing.reading.faults import listed
 from dxfcable.drawing.reading.pieces import Kind, Piece, Pieces

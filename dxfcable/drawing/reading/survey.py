@@ -102,7 +102,7 @@ def tell_passed_over(excerpt: Excerpt, settings: Settings, faults: Faults) -> No
         faults.note(Code.CODE_PAGE_UNKNOWN, text)
     if excerpt.ucs_x is not None and abs(excerpt.ucs_x[1]) + abs(excerpt.ucs_x[2]) > _TURNED:
         text = "the user's coordinate system is turned: loads act along the drawing's own Y"
-        faults.note(Code.TURNED_AXES, text, "Check that the elevation stands upright in world axes.")
+        faults.note(Code.TURNED_AXES, text, "Check that the elevation is upright in world axes.")
     for line in excerpt.damaged:
         text = f"line {line}: here the file does not pair, as if a line was lost or added"
         faults.note(Code.DAMAGED, text, "Audit the drawing in the CAD program.")
