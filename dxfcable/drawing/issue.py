@@ -96,29 +96,38 @@ def issue(
     )
     # The seed stands in the record, and the record in entities that take handles: allot first.
     handles = {item.id: _reserve(item, around) for item in painting.items}
-    fixed = _fixed(around, handles)
     seed = _seed(drawing, allot)
     facts = FileFacts(
         seed=seed[0] if seed else None, opened=opened, memory=memory, origins=painting.origins
     )
     carried = _carriers(painting.items, record.facts_text(facts), cable_records)
-    at = int(drawing.starts[entities.last])
-    newline = line_end_of(drawing.data, at)
-    body = b"".join(
-        encode(entity(item, fixed, carried.get(item.id, ())), newline, encoding)
-        for item in painting.items
-    )
+    body = _body(drawing, entities.last, painting.items, _fixed(around, handles), carried)
     conform.check_entities(
-        body, speech, layers=rows.layers.values(), has_handles=drawing.has_handles
+        body.new, speech, layers=rows.layers.values(), has_handles=drawing.has_handles
     )
     for change in rows.changes:
         conform.check_rows(change.new, speech, has_handles=drawing.has_handles)
-    changes = [*rows.changes, Change(at, at, body), *([seed[1]] if seed else [])]
+    changes = [*rows.changes, body, *([seed[1]] if seed else [])]
     return Issued(
         pieces=pieces(drawing.data, changes),
         layers=tuple(dict.fromkeys(rows.layers.values())),
         findings=(*_version_note(drawing, speech.is_assumed), *rows.findings),
     )
+
+
+def _body(
+    drawing: Scan,
+    end: int,
+    items: Sequence[Item],
+    around: Surroundings,
+    carried: Mapping[str, tuple[str, ...]],
+) -> Change:
+    """Return all entities, inserted directly before the record that ends the section."""
+    at = int(drawing.starts[end])
+    newline = line_end_of(drawing.data, at)
+    encoding = around.dialect.encoding
+    entities = (entity(item, around, carried.get(item.id, ())) for item in items)
+    return Change(at, at, b"".join(encode(tags, newline, encoding) for tags in entities))
 
 
 def model_space_owner(drawing: Scan) -> str:
