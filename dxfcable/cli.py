@@ -216,8 +216,12 @@ def main() -> None:
     try:
         app()
     except DxfcableError as error:
-        from dxfcable.report import error_finding, sentence
+        from dxfcable.report import error_finding, refused, sentence
 
+        if "--json" in sys.argv:
+            import json
+
+            typer.echo(json.dumps(refused("", [error_finding(error)]), indent=1))
         typer.echo(sentence(error_finding(error)), err=True)
         sys.exit(2)
     except Exception:

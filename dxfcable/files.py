@@ -35,7 +35,8 @@ def find_settings(drawing: Path, given: Path | None) -> tuple[Settings, Path | N
     try:
         return load(path.read_text(encoding="utf-8")), path
     except (OSError, UnicodeDecodeError) as error:
-        message = f"the settings {path} cannot be read: {error}"
+        reason = getattr(error, "strerror", None) or "no text in UTF-8"
+        message = f"the settings {path} cannot be read: {reason}"
         raise DxfcableError(
             message, code="settings", remedy="Check the path of --settings."
         ) from error

@@ -19,7 +19,7 @@ from dxfcable.settings import Settings
 
 if TYPE_CHECKING:
     from dxfcable.drawing.bytes.scan import Scan
-    from dxfcable.drawing.items import Painting
+    from dxfcable.drawing.items import Painting, TextItem
     from dxfcable.drawing.record import Memory
     from dxfcable.drawing.strip import Stripping
 
@@ -211,9 +211,15 @@ class _Work:
 
         settings = self._options.settings
         names = [settings.layers.name(role) for role in settings.layers.input_roles()]
-        cut_out = excerpt(self._drawing, names, self.stripping.own_heads)
+        blocks = settings.blocks
+        cut_out = excerpt(
+            self._drawing,
+            names,
+            self.stripping.own_heads,
+            (blocks.support, blocks.load, blocks.data, blocks.anchor),
+        )
         wanted = ReadOptions(units=self._options.units, force_unit=self._options.force_unit)
-        layout = read(cut_out, settings, wanted)
+        layout = _with_unit_note(read(cut_out, settings, wanted), self._options.force_unit)
         return layout if self._options.loads is None else self._with_loads(layout)
 
     def _with_loads(self, layout: Layout) -> Layout:
@@ -275,15 +281,54 @@ class _Work:
             settings=self._options.settings,
             plot_scale=self._options.plot_scale,
             held_places=memory.places,
-            held_texts=memory.texts,
+            held_texts={},
         )
-        items = tuple(
-            replace(item, at=memory.places[item.id])
-            if isinstance(item, TextItem) and item.id in memory.places
-            else item
-            for item in painting.items
-        )
-        return replace(painting, items=items)
+        items, notes = [], []
+        for item in painting.items:
+            if isinstance(item, TextItem):
+                notes += _held_note(item, memory)
+                item = _held(item, memory)
+            items.append(item)
+        return replace(painting, items=tuple(items), findings=(*painting.findings, *notes))
+
+
+def _held(item: TextItem, memory: Memory) -> TextItem:
+    """Put a text where the drafter put it, with the words the drafter gave it."""
+    from dxfcable.drawing.bytes.decode import escape
+
+    place = memory.places.get(item.id, item.at)
+    words = escape(memory.texts[item.id]) if item.id in memory.texts else item.text
+    return replace(item, at=place, text=words)
+
+
+def _held_note(item: TextItem, memory: Memory) -> list[Finding]:
+    """Say what a text edited by hand hides, at every solve."""
+    words = memory.texts.get(item.id)
+    if words is None:
+        return []
+    text = f'{item.id} was edited by hand and is kept: it says "{words}", the solve "{item.text}"'
+    note = Finding(
+        code="edited",
+        severity=Severity.NOTE,
+        text=text,
+        remedy="Give --fresh to let go of edits and moves.",
+        at=item.at,
+        raw=words,
+    )
+    return [note]
+
+
+def _with_unit_note(layout: Layout, asked: str | None) -> Layout:
+    """Say where the command line's unit of force is another than the drawing's."""
+    if asked is None or layout.force_unit in (None, asked):
+        return layout
+    note = Finding(
+        code="force-unit-differs",
+        severity=Severity.NOTE,
+        text=f"the drawing's forces are in {layout.force_unit}; --force-unit {asked} is only the "
+        "unit of numbers that state none",
+    )
+    return replace(layout, findings=(*layout.findings, note))
 
 
 _FORCE_RULES = frozenset({RuleKind.MAX_TENSION, RuleKind.PULL})

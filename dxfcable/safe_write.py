@@ -58,6 +58,8 @@ def write(path: Path, pieces: Sequence[Piece]) -> bool:
             _write_through(target, pieces)
         else:
             _replace(target, pieces, standing)
+    except OutputError:
+        raise
     except OSError as error:
         raise _refused(path, error) from error
     return True
@@ -128,6 +130,9 @@ def _replace(target: Path, pieces: Iterable[Piece], standing: os.stat_result | N
 def _write_through(target: Path, pieces: Sequence[Piece]) -> None:
     """Write into a file that has other names, a whole copy of the old one beside it meanwhile."""
     kept = target.with_name(f".{target.name}.before")
+    if kept.exists():
+        message = f"{target} was being written when a run was stopped; {kept} holds it as it was"
+        raise OutputError(message, remedy=f"Look at both, keep the right one, remove {kept.name}.")
     with kept.open("wb") as file:
         _fill(file.fileno(), [target.read_bytes()])
     _sync_folder(target.parent)

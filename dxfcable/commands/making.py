@@ -47,6 +47,9 @@ def make_starter(output: Path, units: str, settings: Path | None, *, as_json: bo
     from dxfcable.drawing.starter import starter
     from dxfcable.settings import default_page
 
+    if output.exists() and output.stat().st_size:
+        message = f"{output} stands already"
+        raise DxfcableError(message, code="output", remedy="Name a new file for the starter.")
     office, _ = find_settings(output, None)
     said = [write_beside(output, starter(units, office))]
     paths = [str(output)]

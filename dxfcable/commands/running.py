@@ -112,6 +112,44 @@ def run_over(drawings: Sequence[Path], asked: Asked, work: Callable[[Path], Done
     return worst
 
 
+def check_names(drawings: Sequence[Path], target: Target) -> None:
+    """Refuse drawings whose results would take one name in a folder.
+
+    Raises
+    ------
+    DxfcableError
+        Before anything is written.
+    """
+    if target.output is None or len(drawings) < 2:
+        return
+    names = [drawing.name.casefold() for drawing in drawings]
+    doubled = sorted({d.name for d in drawings if names.count(d.name.casefold()) > 1})
+    if doubled:
+        message = f"several drawings are called {', '.join(doubled)}; one result would be lost"
+        raise DxfcableError(message, code="usage", remedy="Write them to folders of their own.")
+
+
+def check_target(target: Target) -> None:
+    """Refuse options that say nothing together.
+
+    Raises
+    ------
+    DxfcableError
+        Naming them.
+    """
+    faults = (
+        (target.backup and not target.in_place, "--backup goes with --in-place"),
+        (target.dry_run and target.output is not None, "--dry-run writes nothing, so -o is idle"),
+        (
+            target.output is not None and target.output.suffix.lower() == ".dwg",
+            f"{target.output} would be a DXF under the name of a DWG",
+        ),
+    )
+    for is_fault, message in faults:
+        if is_fault:
+            raise DxfcableError(message, code="usage", remedy="See --help.")
+
+
 def result_path(drawing: Path, drawings: Sequence[Path], target: Target) -> Path | None:
     """Settle where one result goes, None for a dry run."""
     if target.dry_run:

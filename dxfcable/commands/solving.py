@@ -9,6 +9,8 @@ from dxfcable.commands.running import (
     Asked,
     Done,
     Target,
+    check_names,
+    check_target,
     options,
     result_path,
     run_over,
@@ -26,6 +28,8 @@ if TYPE_CHECKING:
 def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
     """Solve each drawing and write it."""
     _check_rules(asked)
+    check_target(target)
+    check_names(drawings, target)
 
     def work(drawing: Path) -> Done:
         output = result_path(drawing, drawings, target)
@@ -50,6 +54,8 @@ def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
 
 def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
     """Take everything of ours out of each drawing and write it."""
+    check_target(target)
+    check_names(drawings, target)
 
     def work(drawing: Path) -> Done:
         output = result_path(drawing, drawings, target)

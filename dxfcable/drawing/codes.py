@@ -34,6 +34,7 @@ class Code(enum.StrEnum):
     BLOCK_SCALE_UNIT = "block-scale-unit"
     BLOCK_BASE_FAR = "block-base-far"
     BLOCK_LAYER = "block-layer"
+    BLOCK_STRAY = "block-stray"
     BLOCK_UNKNOWN = "block-unknown"
     TAG_UNKNOWN = "tag-unknown"
     TAG_UNKNOWN_FORCE = "tag-unknown-force"
@@ -127,6 +128,7 @@ MEANINGS: dict[str, str] = {
     Code.BLOCK_SCALE_UNIT: "a block scaled by a factor between units",
     Code.BLOCK_BASE_FAR: "a block's base point is far from its symbol",
     Code.BLOCK_LAYER: "a block of ours on the layer of another role",
+    Code.BLOCK_STRAY: "a cable block stands on a layer that is not read",
     Code.BLOCK_UNKNOWN: "a block that is not the one this layer holds",
     Code.TAG_UNKNOWN: "attributes that are not known",
     Code.TAG_UNKNOWN_FORCE: "an attribute that is not known holds a force",

@@ -65,6 +65,8 @@ class Excerpt:
         Filled only where `entities` is empty.
     undecodable : str
         A declared code page that is not known, else "".
+    strays : tuple of PassedOver
+        Inserts of the office's cable blocks on layers that are not read.
     ucs_x : (float, float, float) or None
         Direction of the user's x axis; None where the header does not say.
     damaged : tuple of int
@@ -80,6 +82,7 @@ class Excerpt:
     passed_over: tuple[PassedOver, ...] = ()
     contents: tuple[LayerContent, ...] = ()
     undecodable: str = ""
+    strays: tuple[PassedOver, ...] = ()
     ucs_x: tuple[float, float, float] | None = None
     damaged: tuple[int, ...] = ()
 

@@ -65,6 +65,25 @@ def text_sum(text: str) -> str:
     return f"{zlib.crc32(plain(text).strip().encode('utf-8', 'surrogatepass')):08X}"
 
 
+def look_sum(look: tuple[str, ...]) -> str:
+    """Return a short checksum of how an entity looks: its layer, style, size and turn."""
+    return f"{zlib.crc32('|'.join(look).casefold().encode('utf-8', 'surrogatepass')):08X}"
+
+
+def look_number(value: float) -> str:
+    """Write a size as it survives programs that round."""
+    return f"{value + 0.0:.4g}"
+
+
+def _look(item: Item, around: Surroundings) -> tuple[str, ...]:
+    """Return what `marks` finds again unless a drafter changed the look."""
+    layer = around.layers[item.layer]
+    if not isinstance(item, TextItem):
+        return (layer,)
+    sizes = (look_number(item.height), look_number(item.rotation % 360.0))
+    return (layer, around.style, *sizes)
+
+
 def place_of(item: Item) -> Point:
     """Return the point that tells where an item stands: the one that `marks` finds again."""
     match item:
@@ -100,6 +119,7 @@ def entity(item: Item, around: Surroundings, record: Sequence[str] = ()) -> list
         mark.append((1000, f"part={item.part}"))
     if isinstance(item, TextItem):
         mark.append((1000, f"text={text_sum(item.text)}"))
+    mark.append((1000, f"look={look_sum(_look(item, around))}"))
     x, y = place_of(item)
     mark += [(1010, float(x)), (1020, float(y)), (1030, 0.0)]
     mark += [(1000, line) for line in record]

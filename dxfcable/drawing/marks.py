@@ -16,7 +16,7 @@ import numpy as np
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import decode
 from dxfcable.drawing.dialect import APPID
-from dxfcable.drawing.export import text_sum
+from dxfcable.drawing.export import look_number, look_sum, text_sum
 from dxfcable.drawing.rows import CHAIN
 
 if TYPE_CHECKING:
@@ -46,7 +46,8 @@ class Marked:
     text : str
         Its text now, "" for other kinds; `text_was_edited` compares it with the mark.
     is_restyled : bool
-        It has a colour, weight, scale or linetype of its own, which we never give.
+        It has a colour, weight, scale or linetype of its own, which we never give, or another
+        layer, text style, height or rotation than we gave.
     record_lines : tuple of str
         The part of the record that it carries.
     """
@@ -132,7 +133,7 @@ def _read(drawing: Scan, record: int) -> Marked | None:
     encoding, _ = encoding_of(drawing)
     span = drawing.entity_span(record)
     last = int(np.searchsorted(drawing.starts, span[1]))
-    tags = [pair for pair in drawing.pairs(record) if pair.code != 999]
+    tags = [p for p in drawing.whole(record, "an entity of ours") if p.code != 999]
     own, marked = _split(tags)
     strings = [decode(p.value, encoding) for p in marked if p.code == 1000]
     facts = dict(s.partition("=")[::2] for s in strings if "=" in s)
@@ -141,7 +142,7 @@ def _read(drawing: Scan, record: int) -> Marked | None:
         return None
     vertices = own
     if drawing.kinds[record] == b"POLYLINE" and last > record + 1:
-        vertices = list(drawing.pairs(record + 1))
+        vertices = drawing.whole(record + 1, "a vertex of ours")
     text = next((decode(p.value, encoding) for p in own if p.code == 1), "")
     expected = facts.get("text")
     return Marked(
@@ -157,7 +158,7 @@ def _read(drawing: Scan, record: int) -> Marked | None:
         height=next((_float(p.value) for p in own if p.code == 40), 0.0),
         text=text,
         text_was_edited=expected is not None and text_sum(text) != expected,
-        is_restyled=_is_restyled(own),
+        is_restyled=_is_restyled(own) or _has_other_look(own, facts.get("look"), encoding),
         record_lines=tuple(s for s in strings if s.startswith("record=")),
     )
 
@@ -187,6 +188,20 @@ def _is_restyled(own: list[Pair]) -> bool:
         for code, usual in plain.items()
         if code in values
     )
+
+
+def _has_other_look(own: list[Pair], expected: str | None, encoding: str) -> bool:
+    """Tell whether layer, or a text's style and sizes, are not those that were given."""
+    values: dict[int, bytes] = {}
+    for pair in own:
+        values.setdefault(pair.code, pair.value.strip())
+    layer = decode(values.get(8, b""), encoding)
+    look: tuple[str, ...] = (layer,)
+    if 1 in values:
+        height, turn = (_float(values.get(code, b"0")) for code in (40, 50))
+        style = decode(values.get(7, b""), encoding)
+        look = (layer, style, look_number(height), look_number(turn % 360.0))
+    return expected is not None and look_sum(look) != expected
 
 
 def _is_number(value: bytes, usual: bytes) -> bool:

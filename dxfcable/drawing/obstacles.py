@@ -28,15 +28,18 @@ _AT_ONCE = 8192
 _NUMBER_WIDTH = 24
 _NAME_WIDTH = 64
 _PLACE = (10, 11, 20, 21)
-_FACTS = (40, 41, 42, 50, 70, 72)
+_FACTS = (12, 13, 22, 23, 40, 41, 42, 44, 45, 50, 70, 71, 72)
 _WORD = (1, 3)
 _CODES = (2, *_PLACE, *_FACTS, *_WORD)
 _JOINED = (b"LINE", b"LWPOLYLINE", b"POLYLINE", b"SPLINE", b"LEADER", b"MLINE")
 _ROUND = (b"CIRCLE", b"ARC")
 _CLOSABLE = (b"LWPOLYLINE", b"POLYLINE")
 _TEXTS = (b"TEXT", b"MTEXT", b"ATTDEF", b"ATTRIB")
+_FILLED = (b"SOLID", b"TRACE", b"3DFACE", b"HATCH")
+_IMAGES = (b"IMAGE", b"WIPEOUT", b"OLE2FRAME")
 _NO_PLACE = (b"POLYLINE", b"HATCH", b"VIEWPORT", b"SEQEND")  # their 10/20 is no point of theirs
-_ENDLESS = (b"RAY", b"XLINE")  # their 11/21 is a direction
+_RELATIVE = (b"RAY", b"XLINE", b"ELLIPSE", b"IMAGE", b"WIPEOUT")  # their 11/21 is a direction
+_FAR = 4.0  # how far lines without end are followed, in sizes of all else
 _WIDTH = 0.9  # of the height a character, generous
 
 
@@ -48,9 +51,13 @@ def obstacles(drawing: Scan) -> Obstacles:
     segments: list[Floats] = [np.empty((0, 4))]
     boxes: list[Floats] = [np.empty((0, 4))]
     extents = BlockExtents(drawing)
+    endless: list[Floats] = [np.empty((0, 4))]
     for batch in _batches(drawing):
         segments.append(_segments(batch))
         boxes += [_circles(batch), _words(batch), _inserts(batch, extents)]
+        boxes += [_filled(batch), _images(batch), _bulges(batch)]
+        endless.append(_endless(batch))
+    segments.append(_followed(_joined(endless), segments, boxes))
     return Obstacles(_joined(segments), _joined(boxes))
 
 
@@ -147,7 +154,7 @@ def _segments(batch: _Batch) -> Floats:
     x, y = batch.value[low], batch.value[high]
     good = (record == batch.record[high]) & np.isin(head, batch.heads)
     good &= ~np.isin(batch.kinds[record], _NO_PLACE)
-    good &= ~(np.isin(batch.kinds[record], _ENDLESS) & (codes[opens] == 11))
+    good &= ~(np.isin(batch.kinds[record], _RELATIVE) & (codes[opens] == 11))
     good &= np.isfinite(x) & np.isfinite(y)
     x, y, head = x[good], y[good], head[good]
     is_line = np.isin(batch.kinds[head], _JOINED)
@@ -170,11 +177,93 @@ def _closing_sides(batch: _Batch, head: NDArray[np.int64], x: Floats, y: Floats)
 
 
 def _circles(batch: _Batch) -> Floats:
-    """Return the boxes of circles and arcs."""
-    heads = batch.of_kind(_ROUND)
+    """Return the boxes of circles, arcs and ellipses."""
+    heads = batch.of_kind((*_ROUND, b"ELLIPSE"))
     x, y = batch.first(heads, 10), batch.first(heads, 20)
-    radius = np.abs(batch.first(heads, 40))
+    axis = np.hypot(batch.first(heads, 11), batch.first(heads, 21))
+    radius = np.where(batch.kinds[heads] == b"ELLIPSE", axis, np.abs(batch.first(heads, 40)))
     return _finite(np.column_stack([x - radius, y - radius, x + radius, y + radius]))
+
+
+def _filled(batch: _Batch) -> Floats:
+    """Return the boxes of filled faces and hatches, by all their corners."""
+    heads = batch.of_kind(_FILLED)
+    is_hatch = batch.kinds[batch.head] == b"HATCH"
+    own = np.isin(batch.head, heads) & np.isfinite(batch.value)
+    sides = []
+    for codes in ((10, 11, 12, 13), (20, 21, 22, 23)):
+        which = np.flatnonzero(own & np.isin(batch.tags.codes, codes))
+        # A hatch begins with its elevation point, which is no corner.
+        seen = batch.head[which]
+        is_first = np.append(True, seen[1:] != seen[:-1]) if seen.size else np.empty(0, np.bool_)
+        which = which[~(is_first & is_hatch[which])]
+        slot = np.searchsorted(heads, batch.head[which])
+        low, high = np.full(heads.size, np.inf), np.full(heads.size, -np.inf)
+        np.minimum.at(low, slot, batch.value[which])
+        np.maximum.at(high, slot, batch.value[which])
+        sides.append((low, high))
+    (left, right), (bottom, top) = sides
+    return _finite(np.column_stack([left, bottom, right, top]))
+
+
+def _images(batch: _Batch) -> Floats:
+    """Return the boxes of images: a corner, two directions a pixel long, and the pixels."""
+    heads = batch.of_kind(_IMAGES)
+    x, y = batch.first(heads, 10), batch.first(heads, 20)
+    wide, high = batch.first(heads, 13), batch.first(heads, 23)
+    u = (batch.first(heads, 11) * wide, batch.first(heads, 21) * wide)
+    v = (batch.first(heads, 12) * high, batch.first(heads, 22) * high)
+    xs = np.stack([x, x + u[0], x + v[0], x + u[0] + v[0]])
+    ys = np.stack([y, y + u[1], y + v[1], y + u[1] + v[1]])
+    return _finite(
+        np.column_stack([xs.min(axis=0), ys.min(axis=0), xs.max(axis=0), ys.max(axis=0)])
+    )
+
+
+def _bulges(batch: _Batch) -> Floats:
+    """Return generous boxes of polylines with arcs in them: every side as bulged as the most."""
+    heads = batch.of_kind(_CLOSABLE)
+    is_bulge = (batch.tags.codes == 42) & np.isin(batch.head, heads) & (batch.value != 0.0)
+    bent, group = np.unique(batch.head[is_bulge], return_inverse=True)
+    if not bent.size:
+        return np.empty((0, 4))
+    most = np.zeros(bent.size)
+    np.maximum.at(most, group, np.abs(np.nan_to_num(batch.value[is_bulge])))
+    boxes = []
+    for head, bulge in zip(bent, most, strict=True):
+        own = (batch.head == head) & (batch.kinds[batch.record] != b"POLYLINE")
+        x = batch.value[own & (batch.tags.codes == 10)]
+        y = batch.value[own & (batch.tags.codes == 20)]
+        if x.size != y.size or x.size < 2:
+            continue
+        x, y = np.append(x, x[0]), np.append(y, y[0])
+        reach = bulge * np.hypot(np.diff(x), np.diff(y)) / 2.0
+        low_x, low_y = np.minimum(x[:-1], x[1:]) - reach, np.minimum(y[:-1], y[1:]) - reach
+        high_x, high_y = np.maximum(x[:-1], x[1:]) + reach, np.maximum(y[:-1], y[1:]) + reach
+        boxes.append(np.column_stack([low_x, low_y, high_x, high_y])[:-1])
+    return _finite(np.concatenate(boxes)) if boxes else np.empty((0, 4))
+
+
+def _endless(batch: _Batch) -> Floats:
+    """Return origin and direction of rays, and of construction lines both ways."""
+    rays, lines = batch.of_kind((b"RAY",)), batch.of_kind((b"XLINE",))
+    heads = np.concatenate([rays, lines])
+    order = np.argsort(heads, kind="stable")
+    heads = heads[order]
+    columns = np.column_stack([batch.first(heads, code) for code in (10, 20, 11, 21)])
+    is_line = np.isin(heads, lines)
+    back = columns[is_line] * np.array([1.0, 1.0, -1.0, -1.0])
+    return _finite(np.concatenate([columns, back]))
+
+
+def _followed(endless: Floats, segments: list[Floats], boxes: list[Floats]) -> Floats:
+    """Follow lines without end well beyond everything else."""
+    if not len(endless):
+        return np.empty((0, 4))
+    points = np.concatenate([s.reshape(-1, 2) for s in (*segments, *boxes)] + [endless[:, :2]])
+    size = float(np.max(np.ptp(points, axis=0), initial=1.0))
+    direction = endless[:, 2:] / np.maximum(np.hypot(*endless[:, 2:].T), 1e-300)[:, None]
+    return np.hstack([endless[:, :2], endless[:, :2] + _FAR * size * direction])
 
 
 def _words(batch: _Batch) -> Floats:
@@ -226,11 +315,14 @@ def _inserts(batch: _Batch, extents: BlockExtents) -> Floats:
     one, group = distinct(names)
     own = np.array([extents.box(bytes(names[k])) for k in one])[group]
     scale_x, scale_y = batch.first(heads, 41, 1.0), batch.first(heads, 42, 1.0)
+    # A block inserted in rows and columns reaches as far as its last copy.
+    more_x = (np.maximum(batch.first(heads, 70, 1.0), 1.0) - 1.0) * batch.first(heads, 44, 0.0)
+    more_y = (np.maximum(batch.first(heads, 71, 1.0), 1.0) - 1.0) * batch.first(heads, 45, 0.0)
     return _turned(
         batch.first(heads, 10),
         batch.first(heads, 20),
-        (own[:, 0] * scale_x, own[:, 2] * scale_x),
-        (own[:, 1] * scale_y, own[:, 3] * scale_y),
+        (own[:, 0] * scale_x + np.minimum(more_x, 0), own[:, 2] * scale_x + np.maximum(more_x, 0)),
+        (own[:, 1] * scale_y + np.minimum(more_y, 0), own[:, 3] * scale_y + np.maximum(more_y, 0)),
         batch.first(heads, 50, 0.0),
     )
 

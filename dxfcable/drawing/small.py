@@ -10,7 +10,7 @@ import numpy as np
 from ezdxf.filemanagement import read
 
 from dxfcable.drawing.block_extents import number
-from dxfcable.drawing.bytes.cut import Cutting, Kept, cut, encoding_of
+from dxfcable.drawing.bytes.cut import Cutting, Kept, cut, encoding_of, inserts_of
 from dxfcable.drawing.bytes.decode import decode, layer_key, unescape
 from dxfcable.drawing.excerpt import Drawn, Excerpt, LayerContent, PassedOver
 from dxfcable.errors import DrawingError
@@ -26,7 +26,10 @@ _SHOWN_TEXTS = 40
 
 
 def excerpt(
-    drawing: Scan, layers: Iterable[str], leave_out: frozenset[int] = frozenset()
+    drawing: Scan,
+    layers: Iterable[str],
+    leave_out: frozenset[int] = frozenset(),
+    blocks: Iterable[str] = (),
 ) -> Excerpt:
     """Cut out and load what stands on some layers.
 
@@ -38,6 +41,8 @@ def excerpt(
         Layer names of the office, in any case.
     leave_out : frozenset of int
         Records that are not the drafter's.
+    blocks : iterable of str
+        Names of the office's cable blocks, told where they stand on other layers.
 
     Raises
     ------
@@ -58,6 +63,7 @@ def excerpt(
         passed_over=_passed_over(drawing, cutting, names),
         contents=() if entities else _contents(drawing, leave_out),
         undecodable=cutting.undecodable,
+        strays=_strays(drawing, cutting, blocks),
         ucs_x=_header_point(drawing, "$UCSXDIR"),
         damaged=tuple(drawing.line(at) for at in drawing.damaged),
     )
@@ -136,6 +142,28 @@ def _passed_over(drawing: Scan, cutting: Cutting, names: frozenset[str]) -> tupl
                     why=f"in the external reference {parent}",
                 )
             )
+    return tuple(result)
+
+
+def _strays(drawing: Scan, cutting: Cutting, blocks: Iterable[str]) -> tuple[PassedOver, ...]:
+    """List inserts of cable blocks that were not cut out."""
+    names = frozenset(unescape(name).strip().casefold() for name in blocks)
+    read = {head.record for head in cutting.kept} | {h.record for h, _ in cutting.in_paper_space}
+    encoding, _ = encoding_of(drawing)
+    result = []
+    for record in inserts_of(drawing, names) if names else ():
+        if record in read:
+            continue
+        raw = drawing.first_tag(record, 5)
+        result.append(
+            PassedOver(
+                kind=unescape(decode(drawing.first_tag(record, 2) or b"", encoding)),
+                layer=unescape(decode(drawing.first_tag(record, 8) or b"0", encoding)),
+                handle=raw.decode("latin-1") if raw else None,
+                line=drawing.line(int(drawing.starts[record])),
+                why="not on a cable layer",
+            )
+        )
     return tuple(result)
 
 

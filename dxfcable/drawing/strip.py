@@ -11,7 +11,7 @@ import numpy as np
 from dxfcable.drawing import record
 from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import layer_key, plain
-from dxfcable.drawing.bytes.pairs import find_tags, skip_prologue
+from dxfcable.drawing.bytes.pairs import find_tags, plain_pairs, skip_prologue
 from dxfcable.drawing.bytes.splice import Change
 from dxfcable.drawing.marks import Marked, sort_marked
 from dxfcable.drawing.record import FileFacts, Memory
@@ -86,7 +86,7 @@ def plan_strip(drawing: Scan) -> Stripping:
                 "one before its handles were renumbered; they are taken as ours",
             )
         )
-    changes = [Change(*m.span) for m in found.ours]
+    changes = [_without_comments(drawing, *m.span) for m in found.ours]
     own_records = _records_of(drawing, found.ours)
     row_changes, staying, row_findings = _rows(drawing, facts.opened, own_records)
     memory, memory_findings = _memory(drawing, found.ours, facts)
@@ -100,6 +100,16 @@ def plan_strip(drawing: Scan) -> Stripping:
         removed=len(found.ours),
         findings=(*findings, *row_findings, *memory_findings, *pointer_findings),
     )
+
+
+def _without_comments(drawing: Scan, start: int, end: int) -> Change:
+    """Take out records of ours, but not comments that somebody put among their tags."""
+    data = drawing.data
+    kept = b""
+    if b"999" in data[start:end]:
+        tags = plain_pairs(data, start, end)
+        kept = b"".join(data[tag.start : tag.end] for tag in tags if tag.code == 999)
+    return Change(start, end, kept)
 
 
 def _records_of(drawing: Scan, ours: Iterable[Marked]) -> frozenset[int]:
@@ -159,16 +169,18 @@ def _rows(
         if block.name in tables and all(k in gone for k in body):
             whole.append(block)
         else:
-            changes += [Change(*drawing.span(k)) for k in body if k in gone]
+            changes += [_without_comments(drawing, *drawing.span(k)) for k in body if k in gone]
             if block.name in tables:
                 staying.append(f"table {block.name}")
     section = drawing.section("TABLES")
     if "section TABLES" in opened and section is not None:
         if len(whole) == len(drawing.tables):
             start, end = drawing.span(section.first)[0], drawing.span(section.last)[1]
-            return [Change(start, end)], (), []
+            return [_without_comments(drawing, start, end)], (), []
         staying.append("section TABLES")
-    changes += [Change(drawing.span(t.first)[0], drawing.span(t.last)[1]) for t in whole]
+    for block in whole:
+        start, end = drawing.span(block.first)[0], drawing.span(block.last)[1]
+        changes.append(_without_comments(drawing, start, end))
     findings = [
         _row_note(drawing, k, row, used[row]) for k, (_, row) in rows.items() if k not in gone
     ]
@@ -217,12 +229,13 @@ def _memory(
             text = f"label {marked.id} was moved and stays there"
             findings.append(_memory_note(drawing, marked, "moved", text))
         if marked.is_restyled:
-            text = f"{marked.id} has a look of its own; a solve sets colour, weight and line again"
+            text = f"{marked.id} was given another look; a solve sets layer, style and colour again"
             findings.append(_memory_note(drawing, marked, "restyled", text))
+        if marked.kind != "TEXT" and shift is None and not marked.is_in_place:
+            text = f"{marked.id} was moved by itself; a solve draws it in its place again"
+            findings.append(_memory_note(drawing, marked, "redrawn", text))
         if marked.text_was_edited:
             texts[marked.id] = plain(marked.text)
-            text = f'{marked.id} was edited by hand to "{plain(marked.text)}" and is kept'
-            findings.append(_memory_note(drawing, marked, "edited", text))
     return Memory(places=places, texts=texts), findings
 
 

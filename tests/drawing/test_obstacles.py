@@ -89,3 +89,43 @@ def test_any_drawing_has_finite_obstacles(data: bytes) -> None:
     assert np.isfinite(there.boxes).all()
     assert (there.boxes[:, 0] <= there.boxes[:, 2]).all()
     assert (there.boxes[:, 1] <= there.boxes[:, 3]).all()
+
+
+def _reaches(there: Obstacles, x: float, y: float) -> bool:
+    boxes = there.boxes
+    inside = (boxes[:, 0] <= x) & (x <= boxes[:, 2]) & (boxes[:, 1] <= y) & (y <= boxes[:, 3])
+    return bool(inside.any())
+
+
+def test_what_is_filled_or_bent_is_in_the_way() -> None:
+    def draw(document: object) -> None:
+        space = document.modelspace()  # type: ignore[attr-defined]  # a library document
+        hatch = space.add_hatch()
+        hatch.paths.add_polyline_path([(100, 100), (110, 100), (110, 120), (100, 120)])
+        space.add_solid([(200, 0), (210, 0), (200, 10), (210, 10)])
+        space.add_3dface([(300, 0), (310, 0), (310, 10), (300, 10)])
+        space.add_ellipse((400, 0), major_axis=(5, 0), ratio=0.5)
+        space.add_lwpolyline([(500, 0, 0, 0, 1), (510, 0)], format="xyseb")
+        block = document.blocks.new("CELL")  # type: ignore[attr-defined]
+        block.add_line((0, 0), (1, 1))
+        array = {"row_count": 3, "column_count": 4, "row_spacing": 5, "column_spacing": 6}
+        space.add_blockref("CELL", (600, 0), dxfattribs=array)
+
+    there = found(draw)
+    for x, y in ((105, 110), (205, 5), (305, 5), (403, 2), (505, 4.9), (618.5, 10.5)):
+        assert _reaches(there, x, y), (x, y)
+    assert not _reaches(there, 50, 50)
+    assert there.boxes[:, 0].min() > 99
+
+
+def test_rays_are_followed_beyond_everything() -> None:
+    def draw(document: object) -> None:
+        space = document.modelspace()  # type: ignore[attr-defined]  # a library document
+        space.add_line((0, 0), (10, 10))
+        space.add_ray((0, 0), (1, 0))
+        space.add_xline((0, 5), (0, 1))
+
+    there = found(draw)
+    assert there.segments[:, 2].max() >= 40
+    assert there.segments[:, [1, 3]].max() >= 40
+    assert there.segments[:, [1, 3]].min() <= -30

@@ -9,7 +9,6 @@ import numpy as np
 
 from dxfcable.drawing.bytes.decode import codec, decode, layer_key
 from dxfcable.drawing.bytes.pairs import distinct, texts
-from dxfcable.errors import DrawingError
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
@@ -52,6 +51,25 @@ def encoding_of(drawing: Scan) -> tuple[str, str]:
     """Return the drawing's codec and, where it is not known, the page it declares."""
     page = (drawing.header_value("$DWGCODEPAGE") or b"").decode("latin-1")
     return codec(drawing.version, page)
+
+
+def inserts_of(drawing: Scan, blocks: frozenset[str]) -> list[int]:
+    """Return the INSERTs of ENTITIES that name one of some blocks (keys of `layer_key`)."""
+    entities = drawing.section("ENTITIES")
+    if entities is None:
+        return []
+    tags, record = drawing.tags, drawing.record_of
+    which = np.flatnonzero((tags.codes == 2) & (record > entities.first) & (record < entities.last))
+    which = which[drawing.kinds[record[which]] == b"INSERT"]
+    encoding, _ = encoding_of(drawing)
+    found: list[int] = []
+    for k in range(0, which.size, _AT_ONCE):
+        part = which[k : k + _AT_ONCE]
+        names = texts(drawing.data, tags.values[part], tags.ends[part], _LAYER_WIDTH)
+        first, group = distinct(names)
+        fits = [layer_key(bytes(name), encoding) in blocks for name in names[first]]
+        found += record[part[np.array(fits, np.bool_)[group]]].tolist()
+    return found
 
 
 def records_on(drawing: Scan, layers: frozenset[str]) -> NDArray[np.int64]:
@@ -171,22 +189,12 @@ def _with_key(drawing: Scan, record: int, key: str) -> bytes:
     last = int(np.searchsorted(drawing.starts, end))
     result = []
     for k in range(record, last):
-        try:
-            for pair in drawing.pairs(k):
-                if pair.code == 999 or (k == record and pair.code == 5):
-                    continue
-                result.append(drawing.data[pair.start : pair.end])
-                if k == record and pair.code == 0:
-                    result.append(f"  5\n{key}\n".encode())
-        except ValueError as error:
-            line = drawing.line(int(error.args[1]))
-            msg = f"line {line}: {error.args[0]}, inside an entity on a cable layer"
-            raise DrawingError(
-                msg,
-                code="damaged",
-                line=line,
-                remedy="Audit the drawing in the CAD program and save it again.",
-            ) from error
+        for pair in drawing.whole(k, "an entity on a cable layer"):
+            if pair.code == 999 or (k == record and pair.code == 5):
+                continue
+            result.append(drawing.data[pair.start : pair.end])
+            if k == record and pair.code == 0:
+                result.append(f"  5\n{key}\n".encode())
     return b"".join(piece if piece.endswith(b"\n") else piece + b"\n" for piece in result)
 
 

@@ -31,12 +31,14 @@ class Allotter:
         self._taken = taken
         self._next = max(seed if 0 < seed < HANDLE_LIMIT else 0, greatest + 1)
         self._gaps: Iterator[int] | None = None
+        self._given: set[int] = set()
 
     def __call__(self) -> str:
         """Return a new handle."""
         if self._gaps is None and self._next + 1 < HANDLE_LIMIT:
             handle = self._next
             self._next += 1
+            self._given.add(handle)
             return f"{handle:X}"
         if self._gaps is None:
             self._gaps = self._free()
@@ -49,7 +51,7 @@ class Allotter:
 
     def _free(self) -> Iterator[int]:
         """Yield handles not in use, from the top of the range downwards."""
-        used = {int(h) for h in self._drawing.handles} | set(self._taken)
+        used = {int(h) for h in self._drawing.handles} | self._taken | self._given
         for handle in range(HANDLE_LIMIT - 2, 0, -1):
             if handle not in used:
                 yield handle

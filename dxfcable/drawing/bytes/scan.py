@@ -98,6 +98,26 @@ class Scan:
         last = record + 1 if upto is None else upto
         return plain_pairs(self.data, int(self.starts[record]), int(self.starts[last]))
 
+    def whole(self, record: int, what: str) -> list[Pair]:
+        """Return the tags of one record.
+
+        Raises
+        ------
+        DrawingError
+            Where its lines do not pair; names the line and what the record is.
+        """
+        try:
+            return list(self.pairs(record))
+        except ValueError as error:
+            line = self.line(int(error.args[1]))
+            message = f"line {line}: {error.args[0]}, inside {what}"
+            raise DrawingError(
+                message,
+                code="damaged",
+                line=line,
+                remedy="Audit the drawing in the CAD program and save it again.",
+            ) from error
+
     def first_tag(self, record: int, code: int) -> bytes | None:
         """Return the first value of a code in a record, blanks taken off."""
         if code not in _KEPT:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+_LONGEST = 40  # an id of several marks must stay below the 255 bytes of a DXF string
 _UNFIT = re.compile(r"[^A-Za-z0-9._+'-]")
 
 
@@ -19,7 +20,7 @@ def id_part(mark: str, fallback: str) -> str:
     >>> id_part("P 1/2", "P")
     'P_1_2'
     """
-    return _UNFIT.sub("_", mark.strip()) or fallback
+    return _UNFIT.sub("_", mark.strip())[:_LONGEST] or fallback
 
 
 def unique_parts(marks: Sequence[str], fallback: str) -> tuple[str, ...]:

@@ -106,6 +106,9 @@ def tell_passed_over(excerpt: Excerpt, settings: Settings, faults: Faults) -> No
     for line in excerpt.damaged:
         text = f"line {line}: here the file does not pair, as if a line was lost or added"
         faults.note(Code.DAMAGED, text, "Audit the drawing in the CAD program.")
+    for stray in excerpt.strays:
+        text = f"line {stray.line}: block {stray.kind} on layer {stray.layer} is not read"
+        faults.note(Code.BLOCK_STRAY, text, "Put it on its cable layer, or map that layer.")
     paper: Counter[str] = Counter()
     for passed in excerpt.passed_over:
         parent, bar, name = passed.layer.rpartition("|")
