@@ -264,3 +264,12 @@ def test_a_slanted_or_open_frame_stops() -> None:
     sketch.polyline("FRAM", [(30, 0), (31, 9), (41, 9), (40, 0)], close=True)
     sketch.polyline("FRAM", [(30, 0), (30, 9), (40, 9), (40, 0)])
     assert errors(sketch.read()) == ["frame-unclear", "frame-unclear"]
+
+
+def test_a_deck_with_arcs_is_followed_along_them() -> None:
+    sketch = walkway()
+    deck = {"layer": "S-CABL-DECK"}
+    sketch.space.add_lwpolyline([(0, 0, -0.2), (24, 0)], format="xyb", dxfattribs=deck)
+    (cable,) = sketch.read().cables
+    # The rise of an arc is its bulge times half its chord.
+    assert max(y for _, y in cable.deck) == pytest.approx(0.2 * 12, abs=1e-3)

@@ -18,7 +18,7 @@ from dxfcable.drawing.reading import texts
 from dxfcable.drawing.reading.blocks import attributes, extent, symbol_size, true_name
 from dxfcable.drawing.reading.faults import listed
 from dxfcable.drawing.reading.pieces import Kind, Piece, Pieces
-from dxfcable.drawing.reading.shapes import has_arcs, is_invisible, layer_of, piece_of
+from dxfcable.drawing.reading.shapes import is_invisible, layer_of, piece_of
 from dxfcable.model import Origin
 from dxfcable.quantities import looks_like_force
 
@@ -98,9 +98,6 @@ class _Walk:
                 self._tell_broken(piece.origin)
                 return
             self.pieces.every.append(piece)
-            if has_arcs(entity):
-                text = "its arcs are read as straight lines between their ends"
-                self.faults.note(Code.ENTITY_UNSUPPORTED, text, origin=piece.origin)
 
     def _hidden(self, entity: DXFEntity, layer: str) -> str:
         """Say why an entity is not seen, "" where it is."""

@@ -16,6 +16,7 @@ from ezdxf.entities.point import Point as DxfPoint
 from ezdxf.entities.polyline import Polyline
 from ezdxf.entities.text import Text
 from ezdxf.math import Vec3
+from ezdxf.path.converter import make_path
 
 from dxfcable.drawing.reading import texts
 from dxfcable.drawing.reading.pieces import Kind, Piece
@@ -26,6 +27,7 @@ if TYPE_CHECKING:
 
     from ezdxf.entities.dxfentity import DXFEntity
 
+_ARC_GRAIN = 1e-5  # of a polyline's size
 _SYMBOLS = frozenset({"HATCH", "MPOLYGON", "SOLID", "TRACE", "WIPEOUT", "3DFACE"})
 
 
@@ -85,11 +87,6 @@ def is_invisible(entity: DXFEntity) -> bool:
     return not isinstance(entity, DXFTagStorage) and bool(entity.dxf.get("invisible", 0))
 
 
-def has_arcs(entity: DXFEntity) -> bool:
-    """Say whether a polyline has arc segments, which are read as straight."""
-    return isinstance(entity, LWPolyline | Polyline) and bool(entity.has_arc)
-
-
 def _read(entity: DXFEntity) -> tuple[Kind, list[Vec3], float]:
     """Give kind, points and size of an entity."""
     match entity:
@@ -99,6 +96,8 @@ def _read(entity: DXFEntity) -> tuple[Kind, list[Vec3], float]:
             return Kind.LINE, [entity.dxf.start, entity.dxf.end], 0.0
         case Text() | MText():
             return Kind.TEXT, [texts.alignment_point(entity)], texts.height(entity)
+        case LWPolyline() | Polyline() if bool(entity.has_arc):
+            return Kind.POLYLINE, _along_arcs(entity), 0.0
         case LWPolyline():
             return Kind.POLYLINE, _distinct(entity.vertices_in_wcs()), 0.0
         case Polyline() if entity.is_2d_polyline or entity.is_3d_polyline:
@@ -112,6 +111,14 @@ def _read(entity: DXFEntity) -> tuple[Kind, list[Vec3], float]:
     if entity.dxftype() in _SYMBOLS:
         return Kind.SYMBOL, [], 0.0
     return Kind.OTHER, [], 0.0
+
+
+def _along_arcs(entity: LWPolyline | Polyline) -> list[Vec3]:
+    """Follow a polyline with arcs by chords that stay within 1e-5 of its size."""
+    path = make_path(entity)
+    corners = [Vec3(corner) for corner in path.control_vertices()]
+    size = max(corners[0].distance(corner) for corner in corners)
+    return _distinct(path.flattening(max(size, 1e-9) * _ARC_GRAIN))
 
 
 def _distinct(points: Iterable[Vec3]) -> list[Vec3]:
