@@ -98,6 +98,10 @@ def read_rows(text: str, style: Style, settings: Settings, faults: Faults) -> li
     separator = ";" if ";" in head else ","
     if separator == ";":
         style = replace(style, decimal_comma=True)
+    if "\t" in head and separator not in head:
+        text = "the load table's cells are separated by tabs"
+        faults.error(TableCode.UNREAD, text, "Save it with commas, or semicolons.")
+        return []
     reader = _Reader(style, settings, faults)
     try:
         for line, cells in _records(text, separator):

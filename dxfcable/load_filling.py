@@ -193,7 +193,8 @@ def _tell(spots: Sequence[Spot], entries: Mapping[Key, Entry], unit: str, said: 
         text = f"cable {own[0].name}: the load table sets {listed(given, len(given)) or 'nothing'}"
         text += f" ({len(given)} of {len(own)} load points)"
         if kept:
-            text += f"; {listed(kept, len(kept))} keep their values"
+            verb = "keeps its value" if len(kept) == 1 else "keep their values"
+            text += f"; {listed(kept, len(kept))} {verb}"
         said.note(TableCode.LOADS_SET, text, cable=own[0].name)
     units = dict.fromkeys(force.unit for e in entries.values() for _, force in e.values)
     others = [u for u in units if u != unit]

@@ -121,7 +121,7 @@ def test_a_case_column_sets_the_values_of_the_points_named() -> None:
     assert values(drawn) == {"P1": {"D": 15.0}, "P2": {"D": 22.5}}
     assert [p.source for p in drawn.cables[0].loads] == ["drawing", "csv"]
     assert notes(drawn, TableCode.LOADS_SET) == [
-        "cable C1: the load table sets P2 (1 of 2 load points); P1 keep their values"
+        "cable C1: the load table sets P2 (1 of 2 load points); P1 keeps its value"
     ]
 
 

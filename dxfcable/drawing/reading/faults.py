@@ -108,8 +108,14 @@ class Faults:
         self.add(Severity.NOTE, code, text, remedy, origin=origin, cable=cable, raw=raw)
 
     def doubt(
-        self, error: QuantityError, *, origin: Origin, cable: str | None = None, raw: str = ""
+        self,
+        error: QuantityError,
+        *,
+        origin: Origin,
+        cable: str | None = None,
+        raw: str = "",
+        what: str = "",
     ) -> None:
-        """Add a text that does not read as a quantity."""
-        text = f"{error.message}."
+        """Add a text that does not read as a quantity; `what` names its attribute."""
+        text = f"{what}: {error.message}." if what else f"{error.message}."
         self.error(error.code, text, error.remedy, origin=origin, cable=cable, raw=raw)

@@ -133,5 +133,7 @@ class Tags:
         try:
             return parse(text)
         except QuantityError as error:
-            self._context.faults.doubt(error, origin=self._piece.origin, raw=text)
+            self._context.faults.doubt(
+                error, origin=self._piece.origin, raw=text, what=f"attribute {tag}"
+            )
             return None
