@@ -150,6 +150,7 @@ def solve_pieces(data: bytes, options: Options) -> tuple[list[memoryview], Outco
         memory=memory,
         opened_before=work.stripping.facts.opened,
         pointed_at=work.stripping.pointed_at,
+        looks_before=work.stripping.layer_looks,
         settings=options.settings,
         unit_mm=convert(1.0, layout.length_unit, "mm"),
     )

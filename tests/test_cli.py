@@ -310,3 +310,49 @@ def test_help_loads_no_heavy_library() -> None:
         "assert not heavy, heavy"
     )
     subprocess.run([sys.executable, "-c", code], check=True)
+
+
+def test_drawings_of_one_name_are_refused_before_anything_is_written(
+    bridge: Path, tmp_path: Path
+) -> None:
+    other = tmp_path / "B"
+    other.mkdir()
+    (other / bridge.name).write_bytes(bridge.read_bytes())
+    drawings = [str(bridge), str(other / bridge.name)]
+    command = [sys.executable, "-m", "dxfcable", "solve", *drawings, "-o", str(tmp_path / "solved")]
+    done = subprocess.run(command, capture_output=True, text=True, check=False)
+    assert done.returncode == 2
+    assert bridge.name in done.stderr
+    assert not (tmp_path / "solved").exists()
+
+
+@pytest.mark.parametrize(
+    "arguments", [("-o", "x.dwg"), ("-o", "x.dxf", "--dry-run"), ("--dry-run", "--backup")]
+)
+def test_options_that_say_nothing_together_are_refused(
+    bridge: Path, arguments: tuple[str, ...]
+) -> None:
+    command = [sys.executable, "-m", "dxfcable", "solve", str(bridge), *arguments, "--json"]
+    done = subprocess.run(command, capture_output=True, text=True, check=False, cwd=bridge.parent)
+    assert done.returncode == 2
+    assert json.loads(done.stdout)["error"]["code"] == "usage"
+
+
+def test_a_rule_that_is_not_used_is_told(bridge: Path) -> None:
+    document = json.loads(run("solve", bridge, "--dry-run", "--json", "--pull", "60 kN").stdout)
+    assert "rule-unused" in {f["code"] for f in document["findings"]}
+    assert document["cables"][0]["rule"]["kind"] == "sag"
+
+
+def test_a_text_edited_by_hand_is_told_at_every_solve(bridge: Path, tmp_path: Path) -> None:
+    solved = tmp_path / "solved.dxf"
+    run("solve", bridge, "-o", solved)
+    solved.write_bytes(solved.read_bytes().replace(b"CABLE C1\n", b"SEEN BY JO\n", 1))
+    for _ in range(2):
+        document = json.loads(run("solve", solved, "--in-place", "--json").stdout)
+        told = [f for f in document["findings"] if f["code"] == "edited"]
+        assert len(told) == 1
+        assert "SEEN BY JO" in told[0]["text"]
+    fresh = json.loads(run("solve", solved, "--in-place", "--json", "--fresh").stdout)
+    assert "edited" not in {f["code"] for f in fresh["findings"]}
+    assert b"SEEN BY JO" not in solved.read_bytes()

@@ -56,6 +56,25 @@ def test_hard_links_stay_one_file(tmp_path: Path, new: bytes) -> None:
     assert sorted(p.name for p in tmp_path.iterdir()) == ["a.dxf", "b.dxf"]
 
 
+def test_a_stopped_run_over_hard_links_is_told_and_the_old_drawing_is_there(
+    tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    first, second = tmp_path / "a.dxf", tmp_path / "b.dxf"
+    first.write_bytes(b"old one")
+    second.hardlink_to(first)
+
+    def stopped(*_: object) -> None:
+        raise KeyboardInterrupt
+
+    monkeypatch.setattr(os, "ftruncate", stopped)
+    with pytest.raises(KeyboardInterrupt):
+        safe_write.write(first, [b"new"])
+    monkeypatch.undo()
+    with pytest.raises(OutputError, match="holds it as it was"):
+        safe_write.write(first, [b"newer"])
+    assert (tmp_path / ".a.dxf.before").read_bytes() == b"old one"
+
+
 def test_a_read_only_target_is_refused(tmp_path: Path) -> None:
     target = tmp_path / "a.dxf"
     target.write_bytes(b"old")

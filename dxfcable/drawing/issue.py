@@ -44,6 +44,7 @@ def issue(
     memory: Memory,
     opened_before: tuple[str, ...],
     pointed_at: Mapping[tuple[str, int], str],
+    looks_before: Mapping[str, tuple[str, ...]],
     settings: Settings,
     unit_mm: float,
 ) -> Issued:
@@ -61,6 +62,8 @@ def issue(
         Structures of ours that stand in the file because the drafter uses them.
     pointed_at : mapping
         Handles that entities must keep, by (id, follower number).
+    looks_before : mapping
+        How our layers looked, to say where a drafter's changes are undone.
     unit_mm : float
         Length of one drawing unit [mm].
 
@@ -84,6 +87,7 @@ def issue(
         allot=allot,
         text_style=settings.show.text_style,
         chain_scale=painting.plot_scale / unit_mm,
+        looks_before=looks_before,
     )
     opened = tuple(dict.fromkeys((*opened_before, *rows.opened)))
     around = Surroundings(

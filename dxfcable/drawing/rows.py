@@ -10,7 +10,7 @@ from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import decode, escape, layer_key
 from dxfcable.drawing.bytes.splice import Change, line_end_of
 from dxfcable.drawing.dialect import APPID, Dialect, Tag, encode
-from dxfcable.drawing.uses import Row, users
+from dxfcable.drawing.uses import Row, row_key, users
 from dxfcable.model import Finding, Severity
 
 if TYPE_CHECKING:
@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from dxfcable.drawing.bytes.scan import Scan
 
 ROW = "row"  # in the record: goes once nobody but us uses it
+LOOK_CODES = (62, 70, 370)  # colour, flags, pen width of a layer row
 LENT_ROW = "lent-row"  # named by the drafter's entities before there was a row: always goes
 CHAIN = "DXFCABLE-CHAIN"
 STYLE = "DXFCABLE"
@@ -88,6 +89,7 @@ def plan_rows(
     allot: Callable[[], str],
     text_style: str = "",
     chain_scale: float = 1.0,
+    looks_before: Mapping[str, tuple[str, ...]] | None = None,
 ) -> Rows:
     """Work out the rows that are missing.
 
@@ -101,8 +103,10 @@ def plan_rows(
         The office's text style, used where the drawing has it.
     chain_scale : float
         Drawing units per plotted millimetre.
+    looks_before : mapping of str to (str, ...)
+        How our layers looked in an earlier solve's drawing, by the key of their names.
     """
-    plan = _Plan(drawing, dialect, allot)
+    plan = _Plan(drawing, dialect, allot, looks_before or {})
     names = {role: plan.layer(role, name) for role, name in layers.items()}
     plan.row("APPID", APPID, [(2, APPID), (70, 0)])
     chain = plan.linetype(chain_scale)
@@ -120,8 +124,15 @@ def plan_rows(
 class _Plan:
     """Rows collected table by table."""
 
-    def __init__(self, drawing: Scan, dialect: Dialect, allot: Callable[[], str]) -> None:
+    def __init__(
+        self,
+        drawing: Scan,
+        dialect: Dialect,
+        allot: Callable[[], str],
+        looks_before: Mapping[str, tuple[str, ...]],
+    ) -> None:
         self._drawing = drawing
+        self._looks_before = looks_before
         self._dialect = dialect
         self._allot = allot
         self._encoding, _ = encoding_of(drawing)
@@ -141,8 +152,21 @@ class _Plan:
         if self._dialect.has_owners:
             tags.append((370, look.lineweight))
             tags += self._plot_style()
+        self._note_changed_look(name, tags)
         self.row("LAYER", name, tags)
         return name
+
+    def _note_changed_look(self, name: str, tags: list[Tag]) -> None:
+        """Say where a drafter changed a layer of ours that is set again."""
+        before = self._looks_before.get(row_key(name))
+        values = {code: str(value) for code, value in tags}
+        if before is not None and before != tuple(values.get(c, "") for c in LOOK_CODES):
+            self._note(
+                "layer-restyled",
+                f"layer {name} was given another colour, state or pen width; they are set again. "
+                "A layer of that name in the office's template is used as it is",
+                layer=name,
+            )
 
     def linetype(self, scale: float) -> str:
         """Return the name of the chain linetype, "" where the file has no linetype table."""

@@ -15,7 +15,7 @@ from dxfcable.drawing.bytes.pairs import find_tags, plain_pairs, skip_prologue
 from dxfcable.drawing.bytes.splice import Change
 from dxfcable.drawing.marks import Marked, sort_marked
 from dxfcable.drawing.record import FileFacts, Memory
-from dxfcable.drawing.rows import LENT_ROW, ROW
+from dxfcable.drawing.rows import LENT_ROW, LOOK_CODES, ROW
 from dxfcable.drawing.uses import Row, row_key, users
 from dxfcable.model import Finding, Point, Severity
 
@@ -44,6 +44,8 @@ class Stripping:
         (id/number) of entities that a span of the drafter points at, to their handle.
     own_heads : frozenset of int
         Records of ENTITIES that are ours.
+    layer_looks : mapping of str to (str, ...)
+        Colour, flags and weight of each layer row that goes, by the key of its name.
     removed : int
         How many entities of ours there are.
     """
@@ -52,6 +54,7 @@ class Stripping:
     facts: FileFacts
     pointed_at: Mapping[tuple[str, int], str]
     own_heads: frozenset[int]
+    layer_looks: Mapping[str, tuple[str, ...]]
     removed: int
     findings: tuple[Finding, ...]
 
@@ -97,6 +100,7 @@ def plan_strip(drawing: Scan) -> Stripping:
         facts=FileFacts(seed=facts.seed, opened=staying, memory=memory, origins=facts.origins),
         pointed_at=pointed_at,
         own_heads=frozenset(m.record for m in found.ours),
+        layer_looks=_layer_looks(drawing, facts.opened),
         removed=len(found.ours),
         findings=(*findings, *row_findings, *memory_findings, *pointer_findings),
     )
@@ -185,6 +189,19 @@ def _rows(
         _row_note(drawing, k, row, used[row]) for k, (_, row) in rows.items() if k not in gone
     ]
     return changes, tuple(staying), findings
+
+
+def _layer_looks(drawing: Scan, opened: tuple[str, ...]) -> dict[str, tuple[str, ...]]:
+    """Return how our layer rows look now, a drafter's changes included."""
+    ours = {row_key(name.split(" ", 2)[2]) for name in opened if " LAYER " in name}
+    encoding, _ = encoding_of(drawing)
+    looks = {}
+    for row in drawing.rows("LAYER") if ours else ():
+        key = layer_key(drawing.first_tag(row, 2) or b"", encoding)
+        if key in ours:
+            tags = {p.code: p.value.strip().decode("latin-1") for p in drawing.pairs(row)}
+            looks[key] = tuple(tags.get(code, "") for code in LOOK_CODES)
+    return looks
 
 
 def _row_note(drawing: Scan, record: int, row: Row, user: int) -> Finding:

@@ -82,6 +82,7 @@ def issued(data: bytes, items: tuple[Item, ...] = ITEMS) -> bytes:
         memory=stripping.facts.memory,
         opened_before=stripping.facts.opened,
         pointed_at=stripping.pointed_at,
+        looks_before=stripping.layer_looks,
         settings=Settings(),
         unit_mm=1000.0,
     )

@@ -13,10 +13,13 @@ from hypothesis import strategies as st
 from dxfcable.drawing.bytes.scan import scan
 from dxfcable.drawing.marks import sort_marked
 from dxfcable.drawing.strip import plan_strip
+from dxfcable.errors import DrawingError
+from dxfcable.job import Options, solve_bytes
 from tests.drawing.issuing import ITEMS, issued, stripped
 from tests.generated import (
     BROKEN_FOR_EZDXF,
     VERSIONS,
+    CableOptions,
     Codes,
     Edit,
     Quirk,
@@ -190,3 +193,47 @@ def test_a_look_that_the_drafter_gave_is_said() -> None:
     assert codes.count("restyled") == 1
     assert "restyled" not in {f.code for f in plan_strip(scan(solved)).findings}
     assert issued(red) == solved
+
+
+def test_a_layer_that_the_drafter_changed_is_set_again_and_said() -> None:
+    data = drawing("AC1015", seed=1, layout=CableOptions())
+    solved, plain = solve_bytes(data, Options())
+    assert "layer-restyled" not in {f.code for f in plain.findings}
+    row = solved.index(b"S-CABL-PROF\n 70\n0\n 62\n5\n")
+    red = solved[:row] + solved[row:].replace(b" 62\n5\n", b" 62\n1\n", 1)
+    again, outcome = solve_bytes(red, Options())
+    assert again == solved
+    assert "layer-restyled" in {f.code for f in outcome.findings}
+
+
+def test_handles_near_the_end_of_the_range_stand_once() -> None:
+    for seed in (b"FFFFFFFFFFFFFFF0", b"FFFFFFFFFFFFFFFE", b"FFFFFFFFFFFFFF80"):
+        data = drawing("AC1015", seed=1)
+        at = data.index(b"$HANDSEED\n  5\n") + 14
+        data = data[:at] + seed + data[data.index(b"\n", at) :]
+        solved = issued(data)
+        assert stripped(solved) == data
+        assert issued(solved) == solved
+
+
+def test_comments_that_somebody_put_among_our_tags_stay() -> None:
+    data = drawing("AC1015", seed=1)
+    solved = issued(data)
+    for mark in (b"1001\nDXFCABLE\n", b"  8\nS-CABL-TENS\n", b"S-CABL-PROF\n 70\n"):
+        at = solved.index(mark)
+        commented = solved[:at] + b"999\nKEEP ME\n" + solved[at:]
+        if mark.startswith(b"S-CABL"):
+            at += len(b"S-CABL-PROF\n")
+            commented = solved[:at] + b"999\nKEEP ME\n" + solved[at:]
+        left = stripped(commented)
+        assert left.count(b"KEEP ME") == 1
+        assert left.replace(b"999\nKEEP ME\n", b"") == data
+        assert issued(commented).count(b"KEEP ME") == 1
+
+
+def test_a_line_lost_inside_our_data_is_refused_by_its_number() -> None:
+    solved = issued(drawing("AC1015", seed=1))
+    broken = solved.replace(b"1000\nid=C1/tension/1\n", b"id=C1/tension/1\n")
+    with pytest.raises(DrawingError, match="line") as refused:
+        stripped(broken)
+    assert refused.value.line == solved[: solved.index(b"1000\nid=C1/tension/1")].count(b"\n") + 1
