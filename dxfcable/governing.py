@@ -44,8 +44,6 @@ def refuse_later_work(cable: Cable, remarks: Remarks) -> None:
     asked = []
     if len(cable.supports) > 2:
         asked.append(("later-saddles", "saddles between its ends"))
-    if cable.weight:
-        asked.append(("later-weight", "its own weight (WEIGHT)"))
     if cable.delta_t is not None:
         asked.append(("later-temperature", "a change of temperature (DELTA_T)"))
     if cable.strand:
@@ -63,6 +61,9 @@ def combination_for(
 ) -> Combination | None:
     """Choose the combination that a cable is formed under, None where that stops it."""
     cases = list(dict.fromkeys(case for load in cable.loads for case, _ in load.cases))
+    own_case = weight_case(cable) if cable.weight else None
+    if own_case is not None and own_case not in cases:
+        cases.append(own_case)
     text = forming.under or cable.under
     if forming.under and cable.under and forming.under != cable.under:
         remarks.say(
@@ -106,22 +107,66 @@ def combination_for(
     return combination
 
 
+def weight_case(cable: Cable) -> str | None:
+    """Return the case that a cable's own weight belongs to, None where nothing tells.
+
+    WEIGHT_CASE, else D, else G, else the one case there is; D where there are no loads.
+    """
+    cases = list(dict.fromkeys(case for load in cable.loads for case, _ in load.cases))
+    if cable.weight_case or not cases:
+        return cable.weight_case or "D"
+    return default_under(cases)
+
+
+def weight_under(cable: Cable, combination: Combination, remarks: Remarks) -> float:
+    """Return the cable's weight with the factor that the combination gives it."""
+    if not cable.weight:
+        return 0.0
+    case = weight_case(cable)
+    if case is None:
+        remarks.stop(
+            "no-weight-case",
+            f"cable {cable.mark} has a weight, and neither D nor G is among its cases",
+            remedy="Write WEIGHT_CASE in its data block.",
+        )
+        return 0.0
+    factors = dict(combination.terms)
+    if case not in factors:
+        remarks.say(
+            "no-cable-weight",
+            f"cable {cable.mark}: {combination.text} has no {case}, so no weight of the cable",
+        )
+    return cable.weight * factors.get(case, 0.0)
+
+
 def rule_for(cable: Cable, forming: Forming, remarks: Remarks) -> Rule | None:
     """Choose the governing rule: the drawing's, or the command line's where it applies."""
     option = forming.rule
     if option is None:
         return cable.rule
     if forming.cable is None:
+        if cable.rule is not None:
+            remarks.say(
+                "rule-unused",
+                f"cable {cable.mark} has {_named(cable.rule)} of its own, so {_named(option)} of "
+                f"the command line is not used; with --cable {cable.mark} it would be",
+            )
         return cable.rule or option
     if forming.cable != cable.mark:
         return cable.rule
     if cable.rule is not None:
         remarks.say(
             "rule-overruled",
-            f"cable {cable.mark}: {option.kind.name} {option.text} of the command line "
-            f"overrules {cable.rule.kind.name} {cable.rule.text} of the drawing",
+            f"cable {cable.mark}: {_named(option)} of the command line overrules "
+            f"{_named(cable.rule)} of the drawing",
         )
     return option
+
+
+def _named(rule: Rule) -> str:
+    """Write a rule as it was stated, with its name once."""
+    name = rule.kind.name
+    return rule.text if rule.text.upper().startswith(name) else f"{name} {rule.text}".strip()
 
 
 def rule_value(cable: Cable, rule: Rule) -> float:

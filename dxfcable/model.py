@@ -385,7 +385,9 @@ class Governs:
 class FormedCable:
     """A cable formed under one combination; see the module's units and signs.
 
-    `horizontal` is None where spans differ; `utilization` None without a capacity.
+    `horizontal` is None where spans differ; `utilization` None without a capacity. `curves`
+    holds one polyline a span for a cable with weight: its nodes, and so many points between
+    them that it is true to a millimetre; empty where the nodes alone are the shape.
     """
 
     mark: str
@@ -412,6 +414,7 @@ class FormedCable:
     spans: tuple[SpanShape, ...]
     reactions: tuple[Reaction, ...]
     diagrams: tuple[ForceDiagram, ...]
+    curves: tuple[tuple[Point, ...], ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

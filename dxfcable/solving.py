@@ -9,6 +9,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from dxfcable.anchorages import anchorages
+from dxfcable.curves import curves
 from dxfcable.errors import LayoutError, RuleError
 from dxfcable.governing import (
     Forming,
@@ -17,6 +18,8 @@ from dxfcable.governing import (
     refuse_later_work,
     rule_for,
     rule_value,
+    weight_case,
+    weight_under,
 )
 from dxfcable.hangers import hanger_feet
 from dxfcable.model import (
@@ -36,16 +39,18 @@ from dxfcable.model import (
 )
 from dxfcable.quantities import format_force
 from dxfcable.remarks import Remarks
-from dxfcable.statics.combinations import combine, default_under
+from dxfcable.statics.catenary_forming import form_catenary
+from dxfcable.statics.combinations import combine
 from dxfcable.statics.force_diagram import force_diagram
 from dxfcable.statics.forming import form
+from dxfcable.units import convert
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from dxfcable.curves import Shape
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
-    from dxfcable.statics.funicular import Funicular
 
 __all__ = ["Forming", "solve"]
 
@@ -109,6 +114,7 @@ def _form(
     rule = rule_for(cable, forming, remarks)
     if remarks.is_stopped or combination is None:
         return None
+    weight = weight_under(cable, combination, remarks)
     loads = combine([load.cases for load in cable.loads], combination)
     x = [cable.supports[0].x, *(load.x for load in cable.loads), cable.supports[-1].x]
     if rule is None:
@@ -116,8 +122,14 @@ def _form(
         return None
     ends = cable.supports[0].y, cable.supports[-1].y
     value = rule_value(cable, rule)
+    shape: Shape
     try:
-        shape = form(x, loads, *ends, rule.kind, value, point=rule.point, ea=cable.ea)
+        if weight:
+            shape = form_catenary(
+                x, loads, *ends, rule.kind, value, point=rule.point, weight=weight, ea=cable.ea
+            )
+        else:
+            shape = form(x, loads, *ends, rule.kind, value, point=rule.point, ea=cable.ea)
     except (RuleError, ValueError) as error:
         text = f"cable {cable.mark}: {_refusal(layout, rule, error)}"
         remarks.stop("rule", text, origin=rule.origin, raw=rule.text)
@@ -145,7 +157,7 @@ def _gather(
     cable: Cable,
     rule: Rule,
     combination: Combination,
-    shape: Funicular,
+    shape: Shape,
     settings: Settings,
     remarks: Remarks,
 ) -> FormedCable:
@@ -172,7 +184,7 @@ def _gather(
         level_is_assumed=combination.level_is_assumed,
         supports_rigid=_is_rigid(layout, cable),
         weight=cable.weight,
-        weight_case=cable.weight_case or _dead_case(cable),
+        weight_case=weight_case(cable),
         ea=cable.ea,
         capacity=cable.capacity,
         utilization=_utilization(layout, cable, shape, settings, remarks),
@@ -192,17 +204,12 @@ def _gather(
         spans=(span,),
         reactions=_reactions(cable, shape),
         diagrams=(diagram,),
+        curves=curves(shape, convert(1.0, "mm", layout.length_unit)),
     )
 
 
-def _dead_case(cable: Cable) -> str | None:
-    """Return the case that a cable's own weight belongs to where nothing says so."""
-    cases = list(dict.fromkeys(case for load in cable.loads for case, _ in load.cases))
-    return default_under(cases)
-
-
 def _utilization(
-    layout: Layout, cable: Cable, shape: Funicular, settings: Settings, remarks: Remarks
+    layout: Layout, cable: Cable, shape: Shape, settings: Settings, remarks: Remarks
 ) -> float | None:
     """Hold the largest tension against the capacity, if one is stated."""
     if cable.capacity is None:
@@ -220,7 +227,7 @@ def _utilization(
     return utilization
 
 
-def _reactions(cable: Cable, shape: Funicular) -> tuple[Reaction, ...]:
+def _reactions(cable: Cable, shape: Shape) -> tuple[Reaction, ...]:
     """Return what each support gives."""
     ends = (cable.supports[0], cable.supports[-1])
     forces = (shape.reaction_left, shape.reaction_right)
@@ -230,7 +237,7 @@ def _reactions(cable: Cable, shape: Funicular) -> tuple[Reaction, ...]:
     )
 
 
-def _segments(shape: Funicular, names: Sequence[str]) -> tuple[Segment, ...]:
+def _segments(shape: Shape, names: Sequence[str]) -> tuple[Segment, ...]:
     """Return the pieces; without weight both ends of one are alike."""
     points = [(float(a), float(b)) for a, b in zip(shape.x, shape.y, strict=True)]
     return tuple(
@@ -238,10 +245,10 @@ def _segments(shape: Funicular, names: Sequence[str]) -> tuple[Segment, ...]:
             name=name,
             start=points[k],
             end=points[k + 1],
-            tension_left=float(shape.tensions[k]),
-            tension_right=float(shape.tensions[k]),
-            angle_left=float(shape.angles[k]),
-            angle_right=float(shape.angles[k]),
+            tension_left=float(shape.tensions_left[k]),
+            tension_right=float(shape.tensions_right[k]),
+            angle_left=float(shape.angles_left[k]),
+            angle_right=float(shape.angles_right[k]),
             length=float(shape.lengths[k]),
             unstressed_length=float(shape.unstressed_lengths[k]),
         )
@@ -249,7 +256,7 @@ def _segments(shape: Funicular, names: Sequence[str]) -> tuple[Segment, ...]:
     )
 
 
-def _nodes(cable: Cable, shape: Funicular, remarks: Remarks) -> tuple[Node, ...]:
+def _nodes(cable: Cable, shape: Shape, remarks: Remarks) -> tuple[Node, ...]:
     """Return supports and load points with their hangers, left to right."""
     datum = cable.datum or 0.0
     x, y = shape.x.tolist(), shape.y.tolist()
@@ -285,7 +292,7 @@ def _nodes(cable: Cable, shape: Funicular, remarks: Remarks) -> tuple[Node, ...]
 
 
 def _remark(
-    layout: Layout, cable: Cable, shape: Funicular, settings: Settings, remarks: Remarks
+    layout: Layout, cable: Cable, shape: Shape, settings: Settings, remarks: Remarks
 ) -> None:
     """Say what an engineer should know of this shape."""
     if shape.has_uplift:
@@ -305,6 +312,12 @@ def _remark(
     keys = {s.key for s in cable.supports}
     if any(stay.support in keys for stay in layout.stays) and _is_rigid(layout, cable):
         remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid")
+    if any(stay.support in keys for stay in layout.stays) and not _is_rigid(layout, cable):
+        remarks.say(
+            "stays-give-later",
+            f"cable {cable.mark}: the stretch of its stays acts in states after forming; the "
+            "formed state stands as drawn",
+        )
     if cable.ea is None:
         remarks.say(
             "inextensible",

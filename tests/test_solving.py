@@ -4,13 +4,25 @@ from __future__ import annotations
 
 import math
 from dataclasses import replace
+from itertools import pairwise
 
 import pytest
 
 from dxfcable.errors import LayoutError
-from dxfcable.model import Finding, LoadPoint, LoadSymbol, Mast, Rule, RuleKind, Stay, Support
+from dxfcable.model import (
+    Cable,
+    Finding,
+    LoadPoint,
+    LoadSymbol,
+    Mast,
+    Rule,
+    RuleKind,
+    Stay,
+    Support,
+)
 from dxfcable.settings import AnchorDefaults, Settings
 from dxfcable.solving import Forming, solve
+from dxfcable.statics.catenary_forming import form_catenary
 from tests.layouts import anchor, cable, layout, load, sample
 
 NOTHING = Forming()
@@ -135,7 +147,6 @@ def test_a_cable_without_a_rule_gets_the_table_of_sags() -> None:
 @pytest.mark.parametrize(
     ("changes", "code"),
     [
-        ({"weight": 0.1}, "later-weight"),
         ({"delta_t": 20.0}, "later-temperature"),
         ({"strand": "1/2"}, "later-strand"),
         (
@@ -162,9 +173,9 @@ def test_what_cannot_be_formed_is_refused_by_name(changes: dict[str, object], co
 
 def test_all_faults_of_all_cables_come_at_once() -> None:
     with pytest.raises(LayoutError) as refused:
-        solve(layout(cable(weight=1.0), cable(mark="C2", loads=())), NOTHING, OFFICE)
+        solve(layout(cable(strand="1/2"), cable(mark="C2", loads=())), NOTHING, OFFICE)
     found = [f for f in refused.value.findings if isinstance(f, Finding) and f.severity == "error"]
-    assert {(f.cable, f.code) for f in found} == {("C1", "later-weight"), ("C2", "no-loads")}
+    assert {(f.cable, f.code) for f in found} == {("C1", "later-strand"), ("C2", "no-loads")}
 
 
 def test_capacity_is_used_and_overrun_is_a_warning() -> None:
@@ -267,3 +278,94 @@ def test_two_stays_with_different_feet_need_shares() -> None:
         for t, (x, _) in zip(at.stays, ((-10, 0), (-14, 0)), strict=True)
     ]
     assert across == pytest.approx([0.25 * 63.3333, 0.75 * 63.3333], rel=1e-5)
+
+
+def _footbridge(**changes: object) -> Cable:
+    """Return the level cable of nine equal loads: 120 long, 10 each at 12, sag 12, EA 32400."""
+    facts: dict[str, object] = {
+        "supports": (
+            Support(key=0, mark="S1", x=0.0, y=50.0),
+            Support(key=1, mark="S2", x=120.0, y=50.0),
+        ),
+        "loads": tuple(load(f"P{k}", 12.0 * k, 10.0) for k in range(1, 10)),
+        "rule": Rule(kind=RuleKind.SAG, value=12.0),
+        "ea": 32400.0,
+        "weight": 0.15,
+    }
+    return cable(**(facts | changes))
+
+
+def test_a_cable_with_weight_is_formed_on_its_exact_curve() -> None:
+    # Own value (OWN): the level benchmark with 0.15 per length formed under D.
+    formed = solve(layout(_footbridge()), NOTHING, OFFICE).cables[0]
+    assert formed.horizontal == pytest.approx(147.694, abs=THREE)
+    assert formed.max_tension == pytest.approx(157.322, abs=THREE)
+    assert formed.sag == pytest.approx(12.0, rel=1e-12)
+    total = sum(r.vertical for r in formed.reactions)
+    assert total == pytest.approx(90.0 + 0.15 * formed.unstressed_length, rel=1e-12)
+
+
+def test_weight_takes_the_factor_of_its_case() -> None:
+    plain = solve(layout(_footbridge()), Forming(under="1.2D"), OFFICE).cables[0]
+    pull = Rule(kind=RuleKind.PULL, value=plain.horizontal or 0.0)
+    same = _footbridge(
+        rule=pull,
+        weight=0.18,
+        loads=tuple(load(f"P{k}", 12.0 * k, 12.0) for k in range(1, 10)),
+    )
+    other = solve(layout(same), NOTHING, OFFICE).cables[0]
+    assert other.sag == pytest.approx(12.0, rel=1e-9)
+    assert other.max_tension == pytest.approx(plain.max_tension, rel=1e-12)
+
+
+def test_a_combination_without_the_dead_case_has_no_cable_weight() -> None:
+    loads = tuple(load(f"P{k}", 12.0 * k, 10.0, case="L") for k in range(1, 10))
+    solution = solve(layout(_footbridge(loads=loads, weight_case="D")), Forming(under="L"), OFFICE)
+    assert solution.cables[0].horizontal == pytest.approx(125.0)
+    assert "no-cable-weight" in codes(solution.findings)
+
+
+def test_a_cable_with_weight_and_no_loads_is_a_cable_too() -> None:
+    # Catenary of 5 per length over 20 with sag 6 (Hibbeler, Statics, catenary example; MEM).
+    bare = cable(
+        supports=(Support(key=0, mark="A", x=0.0, y=0.0), Support(key=1, mark="B", x=20.0, y=0.0)),
+        loads=(),
+        rule=Rule(kind=RuleKind.SAG, value=6.0),
+        ea=None,
+        weight=5.0,
+    )
+    formed = solve(layout(bare), NOTHING, OFFICE).cables[0]
+    assert formed.under == "D"
+    assert formed.horizontal == pytest.approx(45.9, abs=0.05)
+    assert formed.max_tension == pytest.approx(75.9, abs=0.05)
+    assert formed.length == pytest.approx(24.2, abs=0.05)
+
+
+def test_the_drawn_curve_is_true_to_a_millimetre() -> None:
+    formed = solve(layout(_footbridge()), NOTHING, OFFICE).cables[0]
+    curve = formed.curves[0]
+    assert {n.x for n in formed.nodes} <= {x for x, _ in curve}
+    half = [((a + c) / 2, (b + d) / 2) for (a, b), (c, d) in pairwise(curve)]
+    exact = form_catenary(
+        [0.0, *(12.0 * k for k in range(1, 10)), 120.0],
+        [10.0] * 9,
+        50.0,
+        50.0,
+        RuleKind.SAG,
+        12.0,
+        weight=0.15,
+        ea=32400.0,
+    ).ordinates_at([x for x, _ in half])
+    assert max(abs(y - e) for (_, y), e in zip(half, exact, strict=True)) < 1e-3
+
+
+def test_with_weight_each_piece_has_two_rays_with_its_weight_between() -> None:
+    formed = solve(layout(_footbridge()), NOTHING, OFFICE).cables[0]
+    diagram = formed.diagrams[0]
+    assert len(diagram.load_line) == 2 * len(diagram.letters) == 2 * len(formed.segments)
+    for k, segment in enumerate(formed.segments):
+        left, right = diagram.load_line[2 * k], diagram.load_line[2 * k + 1]
+        assert left - right == pytest.approx(0.15 * segment.unstressed_length)
+        for ordinate, angle in ((left, segment.angle_left), (right, segment.angle_right)):
+            slope = (diagram.pole[1] - ordinate) / diagram.pole[0]
+            assert math.degrees(math.atan(slope)) == pytest.approx(angle, abs=1e-9)

@@ -17,6 +17,7 @@ from dxfcable.model import ForceDiagram
 if TYPE_CHECKING:
     from numpy.typing import ArrayLike
 
+    from dxfcable.statics.catenary_shape import Catenary
     from dxfcable.statics.funicular import Funicular
 
 # I is taken for 1, and O is the pole.
@@ -54,12 +55,12 @@ def bow_letters(count: int, start: int = 0) -> tuple[str, ...]:
     return tuple(_letter(number) for number in range(start, start + count))
 
 
-def force_diagram(cable: Funicular, *, start: int = 0) -> ForceDiagram:
+def force_diagram(cable: Funicular | Catenary, *, start: int = 0) -> ForceDiagram:
     """Draw the force diagram of a formed span in force units.
 
     Parameters
     ----------
-    cable : Funicular
+    cable : Funicular or Catenary
         The span in equilibrium.
     start : int
         How many spaces the spans to the left have named.
@@ -67,7 +68,8 @@ def force_diagram(cable: Funicular, *, start: int = 0) -> ForceDiagram:
     Returns
     -------
     ForceDiagram
-        A zero load keeps its letter: two letters then share one ordinate.
+        A zero load keeps its letter: two letters then share one ordinate. With weight each
+        piece has two ordinates, for its end tangents, and its weight between them.
 
     Notes
     -----
@@ -81,11 +83,16 @@ def force_diagram(cable: Funicular, *, start: int = 0) -> ForceDiagram:
     >>> diagram.letters, diagram.load_line, round(diagram.closing, 9)
     (('A', 'B', 'C'), (0.0, -15.0, -36.0), -17.0)
     """
-    load_line = -np.cumsum(np.append(0.0, cable.loads)) + 0.0  # no minus zero
-    pole = float(cable.verticals[0])  # the first ray starts at ordinate 0
+    pole = float(cable.verticals_left[0])  # the first ray starts at ordinate 0
+    if cable.weight:
+        ends = np.column_stack((cable.verticals_left, cable.verticals_right)).reshape(-1)
+        load_line = pole - ends
+        load_line[0] = 0.0
+    else:
+        load_line = -np.cumsum(np.append(0.0, cable.loads)) + 0.0  # no minus zero
     slope = float(cable.y[-1] - cable.y[0]) / cable.span
     return ForceDiagram(
-        letters=bow_letters(load_line.size, start),
+        letters=bow_letters(cable.loads.size + 1, start),
         load_line=tuple(load_line.tolist()),
         pole=(cable.horizontal, pole),
         closing=pole - cable.horizontal * slope,

@@ -131,6 +131,41 @@ class Funicular:
         return "right" if nearer_right else "left"
 
     @property
+    def weight(self) -> float:
+        """Weight of the cable: none here [force/length]."""
+        return 0.0
+
+    @property
+    def verticals_left(self) -> Floats:
+        """Vertical component at the left end of each segment; without weight that of both ends."""
+        return self.verticals
+
+    @property
+    def verticals_right(self) -> Floats:
+        """Vertical component at the right end of each segment."""
+        return self.verticals
+
+    @property
+    def tensions_left(self) -> Floats:
+        """Tension at the left end of each segment; without weight that of both ends."""
+        return self.tensions
+
+    @property
+    def tensions_right(self) -> Floats:
+        """Tension at the right end of each segment."""
+        return self.tensions
+
+    @property
+    def angles_left(self) -> Floats:
+        """Slope at the left end of each segment [degrees]."""
+        return self.angles
+
+    @property
+    def angles_right(self) -> Floats:
+        """Slope at the right end of each segment [degrees]."""
+        return self.angles
+
+    @property
     def angles(self) -> Floats:
         """Slope of each segment, rising to the right positive [degrees]."""
         slopes: Floats = np.degrees(np.arctan2(self.verticals, self.horizontal))
