@@ -5,6 +5,7 @@ Nothing here computes a force. Places are decided on rounded numbers and in a fi
 
 from __future__ import annotations
 
+import itertools
 from collections import Counter
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
@@ -12,15 +13,22 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.items import Painting, PlacedDiagram
-from dxfcable.drawing.painting.block_places import free_corner
+from dxfcable.drawing.painting.arrows import plan_arrows
+from dxfcable.drawing.painting.block_places import BlockPlaces
 from dxfcable.drawing.painting.diagram_block import BETWEEN, BlockMaker, arranged
-from dxfcable.drawing.painting.elevation_labels import elevation_labels, room_above
-from dxfcable.drawing.painting.elevation_view import View, draw_elevation, draw_span_dimensions
-from dxfcable.drawing.painting.free_place import grid_over, grown, join
+from dxfcable.drawing.painting.drawn_ground import DrawnGround
+from dxfcable.drawing.painting.elevation_labels import clear_above, elevation_labels
+from dxfcable.drawing.painting.elevation_view import (
+    View,
+    draw_elevation,
+    draw_span_dimensions,
+    extent,
+)
+from dxfcable.drawing.painting.free_place import grown
 from dxfcable.drawing.painting.label_ground import LabelGround
-from dxfcable.drawing.painting.label_placing import put_labels
+from dxfcable.drawing.painting.label_placing import Group, put_labels
 from dxfcable.drawing.painting.plotting import plan_plotting
-from dxfcable.drawing.painting.schedule_text import draw_schedule
+from dxfcable.drawing.painting.schedule_text import arrangements, draw_schedule
 from dxfcable.drawing.painting.sketch import Sketch
 from dxfcable.drawing.painting.views import join_views, rounder_of
 from dxfcable.model import Finding, Severity
@@ -33,13 +41,13 @@ if TYPE_CHECKING:
     from dxfcable.drawing.painting.diagram_block import Block
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.rounding import Rounder
-    from dxfcable.drawing.painting.sketch import Bounds
+    from dxfcable.drawing.painting.schedule_text import Arrangement
     from dxfcable.model import Layout, Point, Rectangle, Solution
     from dxfcable.settings import Settings
 
 _MARGIN = 3.0  # kept free about a block, in text heights
-_ROUND = 15.0  # drawing about an elevation that its labels look at, in text heights
-_LABEL_CELLS = 100_000
+_ROUND = 25.0  # drawing about an elevation that its labels look at, in text heights
+_COLUMN = 6.0  # by which the drawing is sorted for its labels, in text heights
 
 
 def paint(
@@ -81,18 +89,7 @@ def paint(
     QuantityError
         If the plotting scale told is none.
     """
-    spans = [cable.supports[-1].x - cable.supports[0].x for cable in layout.cables]
-    if not spans:
-        message = "there is no cable to paint"
-        raise ValueError(message)
-    greatest = max(
-        b.x - a.x
-        for cable in layout.cables
-        for a, b in zip(cable.supports, cable.supports[1:], strict=False)
-    )
-    heights = [max(n.y for n in c.nodes) - min(n.y for n in c.nodes) for c in solution.cables]
-    size = (max(spans), max(heights))
-    plotting = plan_plotting(layout, settings, plot_scale, span=greatest, size=size)
+    plotting = _planned(layout, solution, settings, plot_scale)
     # Column by column in memory: every free place asks for all of one coordinate at a time.
     obstacles = type(obstacles)(
         np.asfortranarray(obstacles.segments), np.asfortranarray(obstacles.boxes)
@@ -100,6 +97,7 @@ def paint(
     painter = _Painter(
         layout=layout,
         obstacles=obstacles,
+        places=BlockPlaces(obstacles, _MARGIN * plotting.text_height),
         plotting=plotting,
         held_places=held_places,
         held_texts=held_texts,
@@ -107,8 +105,10 @@ def paint(
     views = join_views(layout, solution, settings, plotting.text_height)
     painter.paint_elevations(views)
     for index, view in enumerate(views):
+        shapes = arrangements(view, settings.show.reference_temperature, held_texts)
+        painter.places.prepare(view.prefix, [(shape.width, shape.height) for shape in shapes])
         painter.paint_diagram(index, view)
-        painter.paint_schedule(view, settings.show.reference_temperature)
+        painter.paint_schedule(view, shapes)
     _check_ids(painter.items)
     return Painting(
         items=tuple(painter.items),
@@ -118,6 +118,22 @@ def paint(
         plot_scale=plotting.scale,
         findings=(plotting.finding, *painter.findings),
     )
+
+
+def _planned(
+    layout: Layout, solution: Solution, settings: Settings, plot_scale: str | None
+) -> Plotting:
+    """Plan the plotting by the greatest span and the size of the largest elevation."""
+    spans = [cable.supports[-1].x - cable.supports[0].x for cable in layout.cables]
+    if not spans:
+        message = "there is no cable to paint"
+        raise ValueError(message)
+    greatest = max(
+        b.x - a.x for cable in layout.cables for a, b in itertools.pairwise(cable.supports)
+    )
+    heights = [max(n.y for n in c.nodes) - min(n.y for n in c.nodes) for c in solution.cables]
+    size = (max(spans), max(heights))
+    return plan_plotting(layout, settings, plot_scale, span=greatest, size=size)
 
 
 def _check_ids(items: Iterable[Item]) -> None:
@@ -134,6 +150,7 @@ class _Painter:
 
     layout: Layout
     obstacles: Obstacles
+    places: BlockPlaces
     plotting: Plotting
     held_places: Mapping[str, Point]
     held_texts: Mapping[str, str]
@@ -141,29 +158,26 @@ class _Painter:
     diagrams: list[PlacedDiagram] = field(default_factory=list)
     origins: list[tuple[str, Point]] = field(default_factory=list)
     findings: list[Finding] = field(default_factory=list)
-    bounds: dict[str, Bounds] = field(default_factory=dict)
-    beside: dict[str, Bounds] = field(default_factory=dict)
 
     def paint_elevations(self, views: tuple[View, ...]) -> None:
         """Paint the linework of all cables, then their labels clear of all of it."""
         ground = LabelGround(self.plotting.text_height)
-        sketches = []
+        groups = []
         for view in views:
             sketch = Sketch(rounder_of(view.cable), self.held_texts)
-            draw_elevation(view, sketch)
-            grid = grid_over(
-                grown(sketch.bounds(), _ROUND * view.height), 0.5 * view.height, _LABEL_CELLS
-            )
-            grid.add_segments(self.obstacles.segments)
-            grid.add_boxes(self.obstacles.boxes)
-            level = draw_span_dimensions(view, sketch, grid, room_above(view))
+            region = grown(extent(view), _ROUND * view.height)
+            drawn = DrawnGround(self.obstacles, region, _COLUMN * view.height)
+            arrows = plan_arrows(view, drawn)
+            draw_elevation(view, sketch, arrows)
+            level = draw_span_dimensions(view, sketch, drawn, clear_above(view, arrows))
             ground.add(sketch.items)
-            sketches.append((view, sketch, grid, level))
-        for view, sketch, grid, level in sketches:
-            ground.drawn = grid
-            put_labels(elevation_labels(view, level), sketch, ground, self.held_places)
+            labels = tuple(elevation_labels(view, level, arrows))
+            groups.append(Group(labels=labels, sketch=sketch, drawn=drawn))
+        put_labels(groups, ground, self.held_places)
+        for view, group in zip(views, groups, strict=True):
+            sketch = group.sketch
             self.items += sketch.items
-            self.bounds[view.prefix] = sketch.bounds()
+            self.places.add_view(view.prefix, sketch.bounds(), view.cable.frame, sketch.items)
 
     def paint_diagram(self, index: int, view: View) -> None:
         """Paint force diagram and joints: in the frame, else where it is free."""
@@ -180,9 +194,9 @@ class _Painter:
         corner, where = (0.0, 0.0), ""
         if free:
             _, width, height = arranged(free, BETWEEN * view.height)
-            x0, y0, _, _ = self.bounds[view.prefix]
+            x0, y0, _, _ = self.places.bounds[view.prefix]
             wanted = (x0, y0 - _MARGIN * view.height - height)
-            corner, where = self._free_corner(view, width, height, wanted)
+            _, corner, where = self.places.find(view.prefix, [(width, height)], [wanted])
         self._stand(index, view, block, rounder, corner, where)
 
     def _paint_in_frame(self, index: int, view: View, maker: BlockMaker, frame: Rectangle) -> bool:
@@ -203,33 +217,45 @@ class _Painter:
         )
         rounder = maker.rounder
         self._stand(index, view, block, rounder, corner, "in the frame drawn")
+        self.places.add_block(view.prefix, (frame.x0, frame.y0, frame.x1, frame.y1), ())
         for name, sketch in maker.joints_only(block):
-            self._paint_alone(view, name, sketch, rounder, "joint-placed", "joint")
+            self._paint_joint(view, name, sketch, rounder)
         return True
 
-    def paint_schedule(self, view: View, temperature: str) -> None:
-        """Paint the schedule right of the diagram, or where it is free."""
-        rounder = rounder_of(view.cable)
-        sketch = draw_schedule(view, temperature, rounder, self.held_texts)
-        name = f"{view.prefix}/schedule"
-        self._paint_alone(view, name, sketch, rounder, "schedule-placed", "schedule")
-
-    def _paint_alone(
-        self, view: View, name: str, sketch: Sketch, rounder: Rounder, code: str, word: str
-    ) -> None:
-        """Paint a part that stands by itself."""
+    def _paint_joint(self, view: View, name: str, sketch: Sketch, rounder: Rounder) -> None:
+        """Paint a joint that stands by itself, beside what was painted last."""
         x0, y0, x1, y1 = sketch.bounds()
-        if name in self.held_places:
-            origin, where = rounder.point(self.held_places[name]), "where it was moved to"
-        else:
-            beside = self.beside.get(view.prefix, self.bounds[view.prefix])
-            margin = _MARGIN * view.height
-            wanted = (beside[2] + margin, beside[3] - (y1 - y0))
-            corner, where = self._free_corner(view, x1 - x0, y1 - y0, wanted)
+        origin, where = self._held(name, rounder)
+        if origin is None:
+            size = (x1 - x0, y1 - y0)
+            _, corner, where = self.places.find(
+                view.prefix, [size], [self.places.beside(view.prefix, size)]
+            )
             origin = rounder.point((corner[0] - x0, corner[1] - y0))
-        self._add_part(name, sketch, origin, rounder)
-        self.beside[view.prefix] = (x0 + origin[0], y0 + origin[1], x1 + origin[0], y1 + origin[1])
-        self._note(code, view, f"the {word} stands {where}", origin)
+        self._add_part(view, name, sketch, origin, rounder)
+        self._note("joint-placed", view, f"the joint stands {where}", origin)
+
+    def paint_schedule(self, view: View, shapes: list[Arrangement]) -> None:
+        """Paint the schedule right of the diagram, or where it is free, in the shape that fits."""
+        rounder = rounder_of(view.cable)
+        name = f"{view.prefix}/schedule"
+        sizes = [(shape.width, shape.height) for shape in shapes]
+        # The shape does not depend on whether a drafter moved the schedule.
+        chosen, (x, y), where = self.places.find(
+            view.prefix, sizes, [self.places.beside(view.prefix, size) for size in sizes]
+        )
+        sketch = draw_schedule(view, shapes[chosen], rounder, self.held_texts)
+        origin, held = self._held(name, rounder)
+        if origin is None:
+            origin, held = rounder.point((x, y + shapes[chosen].height)), where
+        self._add_part(view, name, sketch, origin, rounder)
+        self._note("schedule-placed", view, f"the schedule stands {held}", origin)
+
+    def _held(self, name: str, rounder: Rounder) -> tuple[Point | None, str]:
+        """Give the origin that a drafter gave a part, None if he did not."""
+        if name not in self.held_places:
+            return None, ""
+        return rounder.point(self.held_places[name]), "where it was moved to"
 
     def _stand(
         self,
@@ -249,16 +275,14 @@ class _Painter:
             name: rounder.point((corner[0] + dx, corner[1] + dy))
             for (name, _), (dx, dy) in zip(free, offsets, strict=True)
         }
-        taken = []
+        before = len(self.places.blocks[view.prefix])
         for name, sketch in block.parts:
             origin = origins.get(name) or rounder.point(self.held_places[name])
-            self._add_part(name, sketch, origin, rounder)
-            x0, y0, x1, y1 = sketch.bounds()
-            taken.append((x0 + origin[0], y0 + origin[1], x1 + origin[0], y1 + origin[1]))
+            self._add_part(view, name, sketch, origin, rounder)
         diagram_name = block.parts[0][0]
         origin = dict(self.origins)[diagram_name]
         self._record_diagrams(index, block, origin, rounder)
-        self.beside[view.prefix] = join(*taken)
+        self.places.join_blocks(view.prefix, before)
         stands = "where it was moved to" if diagram_name in self.held_places else where
         self._note("diagram-placed", view, f"the force diagram stands {stands}", origin)
 
@@ -278,22 +302,15 @@ class _Painter:
                 )
             )
 
-    def _add_part(self, name: str, sketch: Sketch, origin: Point, rounder: Rounder) -> None:
-        self.items += sketch.moved(origin, rounder)
+    def _add_part(
+        self, view: View, name: str, sketch: Sketch, origin: Point, rounder: Rounder
+    ) -> None:
+        items = sketch.moved(origin, rounder)
+        self.items += items
         self.origins.append((name, origin))
-
-    def _free_corner(
-        self, view: View, width: float, height: float, wanted: Point
-    ) -> tuple[Point, str]:
-        return free_corner(
-            (width, height),
-            wanted,
-            margin=_MARGIN * view.height,
-            view=self.bounds[view.prefix],
-            items=self.items,
-            obstacles=self.obstacles,
-            frames=[cable.frame for cable in self.layout.cables if cable.frame is not None],
-        )
+        x0, y0, x1, y1 = sketch.bounds()
+        bounds = (x0 + origin[0], y0 + origin[1], x1 + origin[0], y1 + origin[1])
+        self.places.add_block(view.prefix, bounds, items)
 
     def _note(self, code: str, view: View, what: str, at: Point, remedy: str = "") -> None:
         """Add a note with the place of what it tells."""

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -9,10 +10,14 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from dxfcable.drawing.excerpt import Obstacles
+from dxfcable.drawing.painting.block_places import FreeGround
 from dxfcable.drawing.painting.free_place import OccupancyGrid, extents, grid_over
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
+
+    from dxfcable.drawing.painting.sketch import Bounds
+    from dxfcable.model import Point
 
 REGION = (-10.0, -10.0, 30.0, 20.0)
 
@@ -27,19 +32,67 @@ def grid(*rows: tuple[float, float, float, float]) -> OccupancyGrid:
     return made
 
 
+def place(
+    *rows: tuple[float, float, float, float],
+    wanted: Point,
+    sizes: tuple[tuple[float, float], ...] = ((3.0, 2.0),),
+    own: Bounds = REGION,
+    others: tuple[Bounds, ...] = (),
+    sheet: Bounds | None = None,
+) -> tuple[int, Point]:
+    """Place a block without a margin to speak of on ground with cells of a third of that."""
+    ground = FreeGround(REGION, 10.0, 0.3, Obstacles(boxes(), boxes(*rows)), sheet)
+    shape, corner, _ = ground.place(sizes, [wanted] * len(sizes), [own], others)
+    return shape, corner
+
+
+AWAY = (-9.0, -9.0, -8.0, -8.0)
+TAKEN = (0.0, 0.0, 4.0, 4.0)
+
+
 def test_the_wanted_place_is_taken_as_it_is_where_it_is_free() -> None:
-    assert grid((0.0, 0.0, 2.0, 2.0)).nearest_free(3.0, 2.0, (2.125, 0.5)) == (2.125, 0.5)
+    assert place(AWAY, wanted=(-7.6125, -9.0), own=AWAY) == (0, (-7.6125, -9.0))
 
 
-def test_else_the_nearest_one() -> None:
-    assert grid((0.0, 0.0, 4.0, 4.0)).nearest_free(3.0, 2.0, (1.0, 3.0)) == (1.0, 4.0)
+def test_else_a_near_one() -> None:
+    _, (x, y) = place(TAKEN, wanted=(1.0, 3.0), own=TAKEN)
+    assert math.dist((x, y), (1.0, 3.0)) < 4.5
+    assert x > 4.0 or x + 3.0 < 0.0 or y > 4.0 or y + 2.0 < 0.0
+
+
+def test_a_place_on_the_sheet_goes_before_a_nearer_one_off_it() -> None:
+    sheet = (-10.0, -10.0, 5.0, 5.0)
+    taken = (0.0, 0.0, 4.0, 4.9)
+    _, (x, y) = place(taken, wanted=(1.0, 4.0), own=AWAY, sheet=sheet)
+    assert x + 3.0 <= 5.0
+    assert y + 2.0 <= 5.0
+
+
+def test_the_shape_that_fits_is_taken() -> None:
+    sheet = (-10.0, -10.0, -4.0, 20.0)
+    sizes = ((9.0, 2.0), (3.0, 6.0))
+    assert place(AWAY, wanted=(-9.0, -7.0), sizes=sizes, own=AWAY, sheet=sheet)[0] == 1
+
+
+def test_a_block_does_not_stand_nearer_to_another_cable() -> None:
+    own, other = (-9.0, 8.0, 0.0, 12.0), (2.0, 8.0, 12.0, 12.0)
+    _, (x, _) = place(own, other, wanted=(2.0, 5.0), own=own, others=(other,))
+    assert x + 3.0 < 2.0
 
 
 def test_a_window_may_be_kept_within_a_rectangle() -> None:
     made = grid((0.0, 0.0, 4.0, 4.0))
     within = (0.0, 0.0, 12.0, 4.5)
-    assert made.nearest_free(3.0, 2.0, (1.0, 3.0), within) == (4.0, 2.0)
-    assert made.nearest_free(3.0, 5.0, (1.0, 3.0), within) is None
+    assert made.free_windows(3.0, 2.0, within).min(axis=0).tolist() == [4.0, 0.0]
+    assert made.free_windows(3.0, 2.0, within).max(axis=0).tolist() == [9.0, 2.0]
+    assert len(made.free_windows(3.0, 5.0, within)) == 0
+    assert made.is_free(3.0, 2.0, (4.0, 2.0), within)
+    assert not made.is_free(3.0, 2.0, (4.0, 3.0), within)
+
+
+def test_no_more_windows_are_looked_at_than_told() -> None:
+    few = grid().free_windows(2.0, 2.0, most=50)
+    assert 20 <= len(few) <= 120
 
 
 def test_touching_is_free() -> None:
@@ -48,14 +101,14 @@ def test_touching_is_free() -> None:
 
 
 def test_a_full_region_has_no_place() -> None:
-    assert grid(REGION).nearest_free(1.0, 1.0, (0.0, 0.0)) is None
-    assert grid().nearest_free(100.0, 1.0, (0.0, 0.0)) is None
+    assert len(grid(REGION).free_windows(1.0, 1.0)) == 0
+    assert len(grid().free_windows(100.0, 1.0)) == 0
 
 
 def test_what_lies_off_the_region_does_not_count() -> None:
     made = grid((100.0, 0.0, 110.0, 5.0))
     assert made.taken(boxes((99.0, 0.0, 120.0, 9.0))).tolist() == [0]
-    assert made.nearest_free(30.0, 20.0, (-5.0, -5.0)) == (-5.0, -5.0)
+    assert made.is_free(30.0, 20.0, (-5.0, -5.0))
 
 
 def test_a_sloping_line_takes_the_cells_along_it_and_not_its_whole_box() -> None:
@@ -85,13 +138,11 @@ def test_what_is_found_overlaps_nothing(
     drawn: list[tuple[float, float, float, float]], width: float, height: float
 ) -> None:
     rows = [(x, y, x + w, y + h) for x, y, w, h in drawn]
-    found = grid(*rows).nearest_free(width, height, (3.0, 3.0))
-    if found is None:
-        return
-    x, y = found
-    for x0, y0, x1, y1 in rows:
-        # Touching cells count as free up to a millionth of a cell.
-        assert x + width <= x0 + 1e-5 or x1 <= x + 1e-5 or y + height <= y0 + 1e-5 or y1 <= y + 1e-5
+    for x, y in grid(*rows).free_windows(width, height)[::7].tolist():
+        for x0, y0, x1, y1 in rows:
+            # Touching cells count as free up to a millionth of a cell.
+            is_left, is_right = x + width <= x0 + 1e-5, x1 <= x + 1e-5
+            assert is_left or is_right or y + height <= y0 + 1e-5 or y1 <= y + 1e-5
 
 
 def test_too_many_cells_become_larger_ones() -> None:

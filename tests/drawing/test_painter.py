@@ -318,6 +318,66 @@ def test_ids_stay_when_a_load_changes() -> None:
     assert [item.id for item in one.items] == [item.id for item in two.items]
 
 
+def test_the_low_point_is_marked_and_the_datum_is_named() -> None:
+    painting, _, _ = painted(SAMPLE)
+    assert text(painting, "C1/elevation/low-point-1") == "LOW PT"
+    assert text(painting, "C1/schedule/summary/elevations/value") == "DATUM OF EL"
+    painting, _, _ = painted(replace(SAMPLE, datum=None))
+    assert text(painting, "C1/schedule/summary/elevations/value") == "DIFFERENCES FROM S1"
+
+
+def test_closing_strings_and_closing_rays_are_chain_lines_and_nothing_else_is() -> None:
+    painting, _, _ = painted(SAMPLE)
+    chains = {i.id for i in painting.items if isinstance(i, LineItem) and i.is_chain}
+    assert chains == {"C1/closing-string/1", "C1/closing-ray/1"}
+
+
+@pytest.mark.parametrize(("deck", "side"), [(6.0, -1.0), (None, 1.0)])
+def test_letters_stand_on_the_side_of_the_loads(deck: float | None, side: float) -> None:
+    # Common practice: Bow's letters stand in the spaces between the external forces.
+    case = Case(spans=(even(3, 40.0, y0=20.0),), deck=deck)
+    layout, solution = layout_of(case)
+    if deck is None:
+        loads = tuple(replace(load, y=30.0) for load in layout.cables[0].loads)
+        layout = replace(layout, cables=(replace(layout.cables[0], loads=loads),))
+    painting = paint(
+        layout,
+        solution,
+        obstacles=obstacles_of(layout),
+        settings=Settings(),
+        plot_scale="1:100",
+        held_places={},
+        held_texts={},
+    )
+    for piece in solution.cables[0].segments:
+        item = by_id(painting)[f"C1/letter/{piece.name[:-1]}"]
+        assert isinstance(item, TextItem)
+        share = (item.at[0] - piece.start[0]) / (piece.end[0] - piece.start[0])
+        on_cable = piece.start[1] + share * (piece.end[1] - piece.start[1])
+        assert side * (item.at[1] - on_cable) > 0.0
+    assert text(painting, "C1/letter/O-1") == "O"
+
+
+def test_stays_pull_away_from_the_joint_and_masts_push_towards_it() -> None:
+    painting, _, solution = painted(replace(SAMPLE, mast=9.0))
+    anchorage = solution.anchorages[0]
+    for key, foot, sign in (
+        ("stay-1", anchorage.stay_feet[0], 1.0),
+        ("mast", anchorage.mast_foot, -1.0),
+    ):
+        assert foot is not None
+        head = by_id(painting)[f"C1/anchorage/S1/{key}/head-1"]
+        assert isinstance(head, TriangleItem)
+        tip, left, right = head.points
+        back = (0.5 * (left[0] + right[0]), 0.5 * (left[1] + right[1]))
+        along, away = vector(back, tip), vector(anchorage.at, foot)
+        assert sign * (along[0] * away[0] + along[1] * away[1]) > 0.0
+    pull = line(painting, "C1/anchorage/S1/anchor/H-arrow")
+    assert pull.end[0] > pull.start[0]  # towards the mast, which stands right of it
+    lift = line(painting, "C1/anchorage/S1/anchor/uplift-arrow")
+    assert lift.end[1] > lift.start[1]
+
+
 def test_loads_have_arrowheads_pointing_down_the_load_line() -> None:
     painting, _, _ = painted(SAMPLE)
     head = by_id(painting)["C1/load-line/1/head"]

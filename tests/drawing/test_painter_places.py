@@ -11,17 +11,21 @@ import pytest
 from dxfcable.drawing.excerpt import Obstacles
 from dxfcable.drawing.items import (
     Item,
+    LineItem,
     Painting,
     PolylineItem,
     TextItem,
 )
 from dxfcable.drawing.painter import paint
 from dxfcable.drawing.painting.free_place import join
-from dxfcable.drawing.painting.label_ground import LabelGround
 from dxfcable.drawing.painting.labels import text_corners
-from dxfcable.drawing.painting.sketch import Bounds, item_points, strokes
+from dxfcable.drawing.painting.rounding import Rounder
+from dxfcable.drawing.painting.schedule_text import arrangements, draw_schedule
+from dxfcable.drawing.painting.sketch import Bounds, item_points
+from dxfcable.drawing.painting.views import join_views
 from dxfcable.model import Layout, Point, Rectangle, Solution
 from dxfcable.settings import Settings
+from tests.drawing.covering import covered_texts, struck_texts
 from tests.drawing.painter_cases import Case, Span, even, layout_of, obstacles_of
 
 SAMPLE = Case(
@@ -72,10 +76,7 @@ def overlap(a: Bounds, b: Bounds) -> bool:
 
 def clashes(painting: Painting) -> list[tuple[str, str]]:
     """List the texts whose boxes overlap."""
-    texts = [item for item in painting.items if isinstance(item, TextItem)]
-    boxes = np.array([text_corners(item) for item in texts])
-    found = LabelGround(painting.text_height).overlaps(boxes, boxes)
-    return [(texts[a].id, texts[b].id) for a, b in zip(*np.nonzero(np.triu(found, 1)), strict=True)]
+    return covered_texts([item for item in painting.items if isinstance(item, TextItem)])
 
 
 @pytest.mark.parametrize("rise", [0.0, 4.0])
@@ -247,13 +248,142 @@ def test_held_places_of_labels_and_parts_are_kept() -> None:
     assert after.load_line[0] == (100.0, 50.0)
 
 
-def test_holding_everything_where_it_stands_changes_nothing() -> None:
-    layout, solution = layout_of(Case(spans=(even(6, 40.0),), deck=0.0, mast=8.0, stay_run=9.0))
+@pytest.mark.parametrize(
+    "cases",
+    [
+        (Case(spans=(even(6, 40.0),), deck=0.0, mast=8.0, stay_run=9.0),),
+        (Case(spans=(even(34, 120.0),), deck=-9.0),),
+        (
+            Case(spans=(even(9, 30.0, rise=2.0),), deck=4.0),
+            Case(spans=(even(5, 30.0, y0=-30.0),), mark="C2", first_key=10),
+        ),
+        (
+            Case(
+                spans=(even(7, 40.0),),
+                frame=Rectangle(x0=50.0, y0=-20.0, x1=75.0, y1=4.0),
+                mast=8.0,
+                stay_run=9.0,
+            ),
+        ),
+    ],
+)
+def test_holding_everything_where_it_stands_changes_nothing(cases: tuple[Case, ...]) -> None:
+    layout, solution = layout_of(*cases)
     free = painted(layout, solution)
     places = dict(free.origins)
     places |= {i.id: i.at for i in free.items if isinstance(i, TextItem) and i.part == i.id}
     again = painted(layout, solution, places=places)
     assert sorted(again.items, key=lambda i: i.id) == sorted(free.items, key=lambda i: i.id)
+
+
+def test_a_label_moved_aside_gets_a_leader_and_one_moved_far_none() -> None:
+    layout, solution = layout_of(SAMPLE)
+    node, h = solution.cables[0].nodes[2], painted(layout, solution).text_height
+    found = {}
+    for away in (1.0, 4.0, 100.0):
+        places: dict[str, Point] = {"C1/elevation/P2": (node.x, node.y - away * h)}
+        items = {i.id: i for i in painted(layout, solution, places=places).items}
+        found[away] = items.get("C1/elevation/P2/leader")
+    assert found[1.0] is None
+    assert found[100.0] is None
+    leader = found[4.0]
+    assert isinstance(leader, LineItem)
+    assert leader.end == pytest.approx((node.x, node.y), abs=1e-7)
+
+
+def test_reaction_arrows_keep_clear_of_the_drafters_mark() -> None:
+    layout, solution = layout_of(SAMPLE)
+    h = painted(layout, solution).text_height
+    free = arrow(painted(layout, solution), "C1/reaction/S1/H-arrow")
+    mark = (-3.0 * h, 12.0 + 0.7 * h, -0.5 * h, 12.0 + 2.5 * h)
+    own = obstacles_of(layout)
+    among = painted(layout, solution, Obstacles(own.segments, np.array([mark])))
+    moved = arrow(among, "C1/reaction/S1/H-arrow")
+    assert mark[1] < free.start[1] < mark[3]
+    for key in "HV":
+        line = arrow(among, f"C1/reaction/S1/{key}-arrow")
+        x, y = sorted((line.start[0], line.end[0])), sorted((line.start[1], line.end[1]))
+        assert not overlap((x[0], y[0], x[1], y[1]), mark)
+    assert math.dist(moved.start, (0.0, 12.0)) < 6.0 * h
+
+
+def arrow(painting: Painting, name: str) -> LineItem:
+    found = next(item for item in painting.items if item.id == name)
+    assert isinstance(found, LineItem)
+    return found
+
+
+def test_the_span_dimension_keeps_off_the_drafters_dimension_chain() -> None:
+    layout, solution = layout_of(SAMPLE)
+    own = obstacles_of(layout)
+    level = arrow(painted(layout, solution), "C1/span/1").start[1]
+    h = painted(layout, solution).text_height
+    chain = [(0.0, level + off * h, 24.0, level + off * h) for off in (-2.0, 0.0, 2.0)]
+    grid_lines = [(x, 0.0, x, level + 20.0) for x in (0.0, 8.0, 16.0, 24.0)]
+    boxes = np.array([(x, level, x + 6.0 * h, level + 1.5 * h) for x in (4.0, 12.0, 20.0)])
+    obstacles = Obstacles(np.vstack((own.segments, chain, grid_lines)), boxes)
+    among = painted(layout, solution, obstacles)
+    found = arrow(among, "C1/span/1").start[1]
+    assert all(abs(found - line[1]) >= 0.7 * h for line in chain)
+    label = next(i for i in among.items if i.id == "C1/span-label/1")
+    assert isinstance(label, TextItem)
+    assert struck_texts([label], obstacles.segments.tolist()) == []
+
+
+def test_schedules_stand_with_their_own_cable() -> None:
+    cases = [
+        Case(spans=(even(4, 40.0, y0=40.0 - 40.0 * k),), mark=f"C{k}", first_key=10 * k)
+        for k in range(3)
+    ]
+    painting = painted(*layout_of(*cases))
+    blocks = parts(painting)
+    for k in range(3):
+        table = blocks[f"C{k}/schedule"]
+        gaps = [
+            min(between(table, blocks[f"C{n}/{part}"]) for part in ("diagram", "elevation-view"))
+            for n in range(3)
+        ]
+        assert min(range(3), key=lambda n: gaps[n]) == k
+
+
+@pytest.mark.parametrize("count", [1, 9, 30, 31, 60])
+def test_a_schedule_is_as_large_as_was_reckoned_in_every_shape(count: int) -> None:
+    layout, solution = layout_of(Case(spans=(even(count, 60.0),), mast=9.0, stay_run=9.0))
+    view = join_views(layout, solution, Settings(), 0.25)[0]
+    shapes = arrangements(view, "10 C", {})
+    assert len(shapes) >= 4
+    names = set()
+    for shape in shapes:
+        sketch = draw_schedule(view, shape, Rounder(9), {})
+        x0, y0, x1, y1 = sketch.bounds()
+        assert (x0, y1) == (0.0, 0.0)
+        assert (x1, -y0) == pytest.approx((shape.width, shape.height))
+        texts = [item for item in sketch.items if isinstance(item, TextItem)]
+        assert covered_texts(texts) == []
+        names.add(frozenset(i.id for i in texts if "head" not in i.id and "caution" not in i.id))
+    assert len(names) == 1  # ids do not depend on the shape
+
+
+def between(a: Bounds, b: Bounds) -> float:
+    across, up = max(a[0] - b[2], b[0] - a[2], 0.0), max(a[1] - b[3], b[1] - a[3], 0.0)
+    return math.hypot(across, up)
+
+
+def test_a_schedule_takes_the_shape_that_fits_the_sheet() -> None:
+    layout, solution = layout_of(Case(spans=(even(5, 40.0),)), text_height=0.25)
+    wide = parts(painted(layout, solution))["C1/schedule"]
+    assert wide[2] - wide[0] > 2.0 * (wide[3] - wide[1])
+    border = ((-4.0, -40.0), (44.0, -40.0), (44.0, 20.0), (-4.0, 20.0))
+    sides = [(*a, *b) for a, b in zip(border, border[1:] + border[:1], strict=True)]
+    # Hatching leaves a strip that the usual shape does not fit.
+    hatch = [(x, -40.0, x, 2.0) for x in np.arange(24.0, 44.0, 1.0)]
+    own = obstacles_of(layout, (*sides, *hatch))
+    x0, y0, x1, y1 = parts(painted(layout, solution, own))["C1/schedule"]
+    assert x1 - x0 < 0.8 * (wide[2] - wide[0])
+    assert x0 > -4.0
+    assert x1 < 44.0
+    assert y0 > -40.0
+    assert y1 < 20.0
 
 
 def test_held_texts_stand_in_place_of_ours() -> None:
@@ -299,15 +429,3 @@ def test_a_mirrored_drawing_has_a_mirrored_cable_and_the_pole_still_to_the_right
     ]
     back = [(24.0 - x, y) for x, y in reversed(profiles[1])]
     assert np.allclose(profiles[0], back, rtol=0.0, atol=1e-7)
-
-
-def test_labels_stay_clear_of_our_own_linework() -> None:
-    layout, solution = layout_of(Case(spans=(even(5, 40.0),), deck=0.0))
-    painting = painted(layout, solution, Obstacles(np.zeros((0, 4)), np.zeros((0, 4))))
-    view = [i for i in painting.items if i.part == i.id]
-    lines = strokes(view)
-    ground = LabelGround(painting.text_height)
-    for item in view:
-        if isinstance(item, TextItem):
-            corners = np.array([text_corners(item)])
-            assert ground.crossings(corners, lines)[0] == 0, item.id

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.painting.force_polygon import DiagramSketch, diagram_size, draw_force_polygon
@@ -16,13 +17,13 @@ if TYPE_CHECKING:
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.rounding import Rounder
     from dxfcable.drawing.painting.sketch import Sketch
-    from dxfcable.model import Point
+    from dxfcable.model import ForceDiagram, Point
 
 _SHARE = 0.5  # of the span: what a diagram may measure where no frame says
-_JOINT_SHARE = 0.3
+_JOINT_SHARE = 0.2
 _LEAST = 12.0  # text heights that a diagram may measure in any case
 _STEP = 1.6  # text heights that short loads measure, so that their letters stand apart
-_MOST_SHARE = 2.0  # of the span: how large short loads may make a diagram
+_MOST_SHARE = 1.0  # of the span: how large short loads may make a diagram
 BETWEEN = 4.0  # between the parts, in text heights
 _MARGIN = 0.1  # of a frame that stays free, both sides together
 _LEGIBLE = 8.0  # text heights: a smaller diagram shows nothing
@@ -109,7 +110,7 @@ class BlockMaker:
         steps = sorted(
             abs(b - a)
             for diagram in self.view.formed.diagrams
-            for a, b in zip(diagram.load_line, diagram.load_line[1:], strict=False)
+            for a, b in _load_steps(diagram)
             if a != b
         )
         force = steps[len(steps) // 4] if steps else math.inf
@@ -176,3 +177,10 @@ def arranged(sketches: list[Sketch], between: float) -> tuple[tuple[Point, ...],
         offsets.append((x - x0, height - y1))
         x += x1 - x0 + between
     return tuple(offsets), x - between, height
+
+
+def _load_steps(diagram: ForceDiagram) -> list[tuple[float, float]]:
+    """Give the ends of each load on the load line, a cable's own weight left out."""
+    line = diagram.load_line
+    steps = list(pairwise(line))
+    return steps[1::2] if len(line) == 2 * len(diagram.letters) else steps

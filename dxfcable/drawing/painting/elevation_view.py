@@ -8,15 +8,21 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from dxfcable.drawing.painting import turned_boxes
+from dxfcable.drawing.painting.arrows import HEAD, draw_arrows
+from dxfcable.drawing.painting.labels import text_width
+
 if TYPE_CHECKING:
-    from dxfcable.drawing.painting.free_place import OccupancyGrid
-    from dxfcable.drawing.painting.sketch import Sketch
+    from numpy.typing import NDArray
+
+    from dxfcable.drawing.painting.arrows import ArrowPair
+    from dxfcable.drawing.painting.drawn_ground import DrawnGround
+    from dxfcable.drawing.painting.sketch import Bounds, Sketch
     from dxfcable.drawing.painting.wording import Wording
     from dxfcable.model import Anchorage, Cable, FormedCable, Node, Point, Reaction
 
-_CORNER = 0.9  # where the reaction arrows start off the support, in text heights
-_ARROW = 4.0
-_HEAD = 1.1
+_LEVELS, _LEVEL_STEP = 14, 0.9  # places for the span dimension above and below, text heights
+_SPOILT, _CROSSED = 40.0, 0.6
 _MOST_LABELLED = 20  # points up to which nothing is dropped
 
 
@@ -53,6 +59,13 @@ class View:
         """Tell whether there are too many points to label them all."""
         return len(self.cable.loads) > _MOST_LABELLED
 
+    @property
+    def load_side(self) -> int:
+        """Give the side of the cable that its loads are drawn on: 1 above, -1 below."""
+        nodes = [node for node in self.formed.nodes if not node.is_support]
+        above = sum(load.y > node.y for load, node in zip(self.cable.loads, nodes, strict=True))
+        return 1 if 2 * above > len(nodes) else -1
+
     def spans(self) -> tuple[tuple[int, int], ...]:
         """Give first and last node of each span."""
         ends = [i for i, node in enumerate(self.formed.nodes) if node.is_support]
@@ -68,16 +81,40 @@ class View:
         first = next(node for node in self.formed.nodes if node.is_support)
         return -1 if reaction.support == first.support else 1
 
+    def reaction_names(self) -> tuple[str, ...]:
+        """Give the part of ids of each reaction: that of its support's node."""
+        by_support = {
+            node.support: name
+            for name, node in zip(self.node_names, self.formed.nodes, strict=True)
+            if node.is_support
+        }
+        return tuple(by_support[reaction.support] for reaction in self.formed.reactions)
+
     def support_node(self, key: int) -> Node:
         """Give the node of a support."""
         return next(node for node in self.formed.nodes if node.support == key)
 
 
-def draw_elevation(view: View, sketch: Sketch) -> None:
-    """Draw profile, closing strings, sag, hangers and reaction arrows of one cable."""
+def extent(view: View) -> Bounds:
+    """Give the rectangle about a cable's nodes, hangers, masts and stays."""
+    points = [(node.x, node.y) for node in view.formed.nodes]
+    points += [
+        (node.x, node.hanger_foot) for node in view.formed.nodes if node.hanger_foot is not None
+    ]
+    for _, anchorage in view.anchorages:
+        feet = (*anchorage.stay_feet, *(anchor.at for anchor in anchorage.anchors))
+        points += [*feet, *([anchorage.mast_foot] if anchorage.mast_foot else [])]
+    across, up = [x for x, _ in points], [y for _, y in points]
+    return min(across), min(up), max(across), max(up)
+
+
+def draw_elevation(view: View, sketch: Sketch, arrows: tuple[ArrowPair, ...]) -> None:
+    """Draw profile, closing strings, sag, hangers and the arrows of one cable."""
     for number, (first, last) in enumerate(view.spans(), start=1):
         points = [view.node_point(i) for i in range(first, last + 1)]
-        sketch.polyline(f"{view.prefix}/profile/{number}", "profile", points)
+        # With weight the cable is a curve between its nodes, else the nodes are the shape.
+        curve = view.formed.curves[number - 1] if view.formed.curves else points
+        sketch.polyline(f"{view.prefix}/profile/{number}", "profile", curve)
         name = f"{view.prefix}/closing-string/{number}"
         sketch.line(name, "closing_string", points[0], points[-1], is_chain=True)
         _draw_sag(view, sketch, number)
@@ -85,18 +122,7 @@ def draw_elevation(view: View, sketch: Sketch) -> None:
         if node.hanger is not None and node.hanger_foot is not None:
             foot = (node.x, node.hanger_foot)
             sketch.line(f"{view.prefix}/hanger/{name}", "hanger", (node.x, node.y), foot)
-    for reaction, name in zip(view.formed.reactions, reaction_names(view), strict=True):
-        _draw_reaction(view, sketch, reaction, f"{view.prefix}/reaction/{name}")
-
-
-def reaction_names(view: View) -> tuple[str, ...]:
-    """Give the part of ids of each reaction: that of its support's node."""
-    by_support = {
-        node.support: name
-        for name, node in zip(view.node_names, view.formed.nodes, strict=True)
-        if node.is_support
-    }
-    return tuple(by_support[reaction.support] for reaction in view.formed.reactions)
+    draw_arrows(view, sketch, arrows)
 
 
 def sag_line(view: View, span: int) -> tuple[Point, Point]:
@@ -112,37 +138,13 @@ def _draw_sag(view: View, sketch: Sketch, number: int) -> None:
     if top[1] <= bottom[1]:
         return
     name = f"{view.prefix}/sag/{number}"
-    size = min(_HEAD * view.height, 0.3 * (top[1] - bottom[1]))
+    size = min(HEAD * view.height, 0.3 * (top[1] - bottom[1]))
     sketch.line(name, "closing_string", top, bottom)
     sketch.arrowhead(f"{name}/head-1", "closing_string", top, (0.0, 1.0), size)
     sketch.arrowhead(f"{name}/head-2", "closing_string", bottom, (0.0, -1.0), size)
 
 
-def reaction_arrow(view: View, reaction: Reaction) -> tuple[Point, Point, Point]:
-    """Give corner, end of the horizontal and end of the vertical arrow of a reaction."""
-    node, side, h = view.support_node(reaction.support), view.outward(reaction), view.height
-    corner = (node.x + side * _CORNER * h, node.y + _CORNER * h)
-    return (
-        corner,
-        (corner[0] + side * _ARROW * h, corner[1]),
-        (corner[0], corner[1] + _ARROW * h),
-    )
-
-
-def _draw_reaction(view: View, sketch: Sketch, reaction: Reaction, name: str) -> None:
-    """Draw both components where they are not zero, each as it acts on the cable."""
-    corner, aside, above = reaction_arrow(view, reaction)
-    size = _HEAD * view.height
-    for letter, far, value in (("H", aside, reaction.horizontal), ("V", above, reaction.vertical)):
-        if view.wording.force(value).startswith("0 "):
-            continue
-        tail, tip = (corner, far) if value > 0 else (far, corner)
-        sketch.line(f"{name}/{letter}-arrow", "reaction", tail, tip)
-        towards = (tip[0] - tail[0], tip[1] - tail[1])
-        sketch.arrowhead(f"{name}/{letter}-head", "reaction", tip, towards, size)
-
-
-def draw_span_dimensions(view: View, sketch: Sketch, drawn: OccupancyGrid, clear: float) -> float:
+def draw_span_dimensions(view: View, sketch: Sketch, drawn: DrawnGround, clear: float) -> float:
     """Draw the chain of span dimensions in a free strip above the view, else below it.
 
     Parameters
@@ -151,10 +153,10 @@ def draw_span_dimensions(view: View, sketch: Sketch, drawn: OccupancyGrid, clear
         The cable.
     sketch : Sketch
         Gets the items.
-    drawn : OccupancyGrid
+    drawn : DrawnGround
         The drafter's drawing.
     clear : float
-        Room that labels above the supports take [length].
+        Ordinate up to which arrows and labels above the supports reach.
 
     Returns
     -------
@@ -167,7 +169,7 @@ def draw_span_dimensions(view: View, sketch: Sketch, drawn: OccupancyGrid, clear
     for number, (left, right) in enumerate(itertools.pairwise(supports), start=1):
         name = f"{view.prefix}/span/{number}"
         sketch.line(name, "closing_string", (left.x, level), (right.x, level))
-        size = min(_HEAD * h, 0.3 * (right.x - left.x))
+        size = min(HEAD * h, 0.3 * (right.x - left.x))
         sketch.arrowhead(f"{name}/head-1", "closing_string", (left.x, level), (-1, 0), size)
         sketch.arrowhead(f"{name}/head-2", "closing_string", (right.x, level), (1, 0), size)
     for number, node in enumerate(supports, start=1):
@@ -177,12 +179,38 @@ def draw_span_dimensions(view: View, sketch: Sketch, drawn: OccupancyGrid, clear
     return level
 
 
-def _dimension_level(view: View, drawn: OccupancyGrid, clear: float) -> float:
-    """Choose the dimension line's ordinate: the first strip that the drafter left free."""
+def _dimension_level(view: View, drawn: DrawnGround, clear: float) -> float:
+    """Choose the dimension line's ordinate: the strip and text room that the drafter left free.
+
+    Lines that cross a strip upright, as grid lines do, are common and count little.
+    """
     h, nodes = view.height, view.formed.nodes
-    top = max(node.y for node in nodes) + clear + 2.0 * h
+    top = clear + h
     feet = [node.hanger_foot for node in nodes if node.hanger_foot is not None]
     bottom = min([node.y for node in nodes] + feet) - 5.0 * h
-    levels = [top + 2.5 * h * i for i in range(5)] + [bottom - 2.5 * h * i for i in range(5)]
-    strips = np.array([(nodes[0].x, y - h, nodes[-1].x, y + 2.0 * h) for y in levels])
-    return levels[int(np.argmin(drawn.taken(strips) > 0))]
+    levels = np.array(
+        [top + _LEVEL_STEP * h * i for i in range(_LEVELS)]
+        + [bottom - _LEVEL_STEP * h * i for i in range(_LEVELS)]
+    )
+    left, right = nodes[0].x, nodes[-1].x
+    half = 0.5 * text_width(view.wording.length(right - left), h) + 0.5 * h
+    middle = 0.5 * (left + right)
+    inset = min(1.5 * h, 0.2 * (right - left))  # extension lines and grid lines end the strip
+    words = _boxes(levels, (middle - half, middle + half), (0.1 * h, 2.0 * h))
+    # A line along the strip, or a text in it, spoils it; one across it does not.
+    order = np.argsort(levels, kind="stable")
+    band = (left + inset, levels.min() - h, right - inset, levels.max() + h)
+    along, across = drawn.strips(levels[order], 0.7 * h, band, 0.5 * h)
+    costs = np.empty(len(levels))
+    costs[order] = _SPOILT * along + _CROSSED * across
+    costs += drawn.burdens(turned_boxes.of_boxes(words), 1e-6 * h, _SPOILT, _SPOILT)
+    costs += np.concatenate((np.arange(_LEVELS), np.arange(_LEVELS) + 2.0))
+    return float(levels[int(np.argmin(np.round(costs, 6)))])
+
+
+def _boxes(
+    levels: NDArray[np.float64], across: tuple[float, float], up: tuple[float, float]
+) -> NDArray[np.float64]:
+    """Give a box at each level."""
+    ends = np.broadcast_to(across, (len(levels), 2))
+    return np.column_stack((ends[:, 0], levels + up[0], ends[:, 1], levels + up[1]))

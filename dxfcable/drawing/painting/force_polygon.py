@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.painting.label_ground import Label, LabelGround
 from dxfcable.drawing.painting.label_places import beside_line, readable_angle
-from dxfcable.drawing.painting.label_placing import put_labels
+from dxfcable.drawing.painting.label_placing import Group, put_labels
 from dxfcable.drawing.painting.labels import text_width
 from dxfcable.drawing.painting.scale_words import draw_force_scale
 from dxfcable.drawing.painting.sketch import Sketch
@@ -24,6 +24,7 @@ if TYPE_CHECKING:
 _LAYER = "force_diagram"
 _ASIDE = 4.0  # between the diagrams of neighbouring spans, in text heights
 _ACROSS = (0.45, 1.5, 2.55)  # of a letter from the load line
+_COLUMN = 8.0
 _ALONG = (0.0, 0.65, -0.65, 1.3, -1.3, 2.0, -2.0, 2.6, -2.6)
 
 
@@ -148,10 +149,9 @@ class _SpanDiagram:
         self._draw_rays(first_ray)
         self._draw_loads(first_load)
         self._draw_pole_distance()
-        ground = LabelGround(self.height)
-        ground.add(self.sketch.items)
+        ground = LabelGround(self.height, self.sketch.items)
         labels = (*self._letters(), *self._values(first_load), *self._notes(first_ray))
-        put_labels(labels, self.sketch, ground)
+        put_labels([Group(labels=tuple(labels), sketch=self.sketch)], ground)
 
     def _draw_rays(self, first: int) -> None:
         prefix, pole = self.view.prefix, self.geometry.pole
@@ -232,8 +232,9 @@ class _SpanDiagram:
             middle = 0.5 * (start[1] + end[1])
             places = tuple(
                 (self.side * (half + across * h), middle + along * h)
+                for column in (0.0, _COLUMN)  # a second one where loads are too short
                 for along in _ALONG
-                for across in (0.6, 1.9, 2.8)
+                for across in (0.6 + column, 1.9 + column, 2.8 + column)
             )
             name = f"{self.view.prefix}/load-value/{first + index}"
             labels.append(
@@ -242,6 +243,8 @@ class _SpanDiagram:
                     layer=_LAYER,
                     text=text,
                     places=places,
+                    target=(start, end),
+                    leader_from=4.0,
                 )
             )
         return labels

@@ -129,52 +129,69 @@ class OccupancyGrid:
         sums = table[k, m] - table[i, m] - table[k, j] + table[i, j]
         return np.where(outside, 0.0, sums)
 
-    def nearest_free(
-        self, width: float, height: float, wanted: Point, within: Bounds | None = None
-    ) -> Point | None:
-        """Find the free window whose lower left corner lies nearest to the wanted one.
+    def is_free(
+        self, width: float, height: float, corner: Point, within: Bounds | None = None
+    ) -> bool:
+        """Tell whether a window lies on the grid, within a rectangle, and on nothing taken."""
+        x, y = corner
+        x1, y1 = self.x0 + self.columns * self.cell, self.y0 + self.rows * self.cell
+        left, low, right, high = (self.x0, self.y0, x1, y1) if within is None else within
+        is_on = max(self.x0, left) <= x and x + width <= min(x1, right)
+        is_on &= max(self.y0, low) <= y and y + height <= min(y1, high)
+        return is_on and self.taken(np.array([[x, y, x + width, y + height]]))[0] == 0
+
+    def free_windows(
+        self,
+        width: float,
+        height: float,
+        within: Bounds | None = None,
+        most: int = 1 << 30,
+    ) -> NDArray[np.float64]:
+        """Give the lower left corners of free windows of one size, cell by cell.
 
         Parameters
         ----------
         width, height : float
             Size of the window [length].
-        wanted : Point
-            Where its lower left corner would best be.
         within : rectangle, optional
             That the window must not leave.
+        most : int, optional
+            How many corners to look at: above that, only every second, third ... row and
+            column of cells.
 
         Returns
         -------
-        Point or None
-            Lower left corner, the wanted one if that is free; None if nothing is free.
+        (n, 2) array
         """
-        x, y = wanted
         x1, y1 = self.x0 + self.columns * self.cell, self.y0 + self.rows * self.cell
         left, low, right, high = (self.x0, self.y0, x1, y1) if within is None else within
-        is_on = max(self.x0, left) <= x and x + width <= min(x1, right)
-        is_on &= max(self.y0, low) <= y and y + height <= min(y1, high)
-        if is_on and self.taken(np.array([[x, y, x + width, y + height]]))[0] == 0:
-            return wanted
         across = math.ceil(width / self.cell - _TOLERANCE)
         up = math.ceil(height / self.cell - _TOLERANCE)
         if across > self.columns or up > self.rows:
-            return None
+            return np.zeros((0, 2))
         table = self._table()
-        sums = table[across:, up:] - table[:-across, up:]
-        sums = sums - table[across:, :-up] + table[:-across, :-up]
-        is_free = sums == 0
-        if within is not None:
-            at_x = self.x0 + np.arange(is_free.shape[0]) * self.cell
-            at_y = self.y0 + np.arange(is_free.shape[1]) * self.cell
-            is_free &= ((at_x >= left) & (at_x + width <= right))[:, None]
-            is_free &= ((at_y >= low) & (at_y + height <= high))[None, :]
-        columns, rows = np.nonzero(is_free)
-        if not len(columns):
-            return None
-        distance = np.hypot(columns - (x - self.x0) / self.cell, rows - (y - self.y0) / self.cell)
-        # Rounded, so that of equally near windows the first wins on every machine.
-        best = int(np.argmin(np.round(distance, 4)))
-        return self.x0 + float(columns[best]) * self.cell, self.y0 + float(rows[best]) * self.cell
+        i, j = (
+            self._corners(low_end, high_end, start, size, count)
+            for low_end, high_end, start, size, count in (
+                (left, right, self.x0, width, self.columns + 1 - across),
+                (low, high, self.y0, height, self.rows + 1 - up),
+            )
+        )
+        step = max(1, math.isqrt(len(i) * len(j) // most))
+        i, j = i[::step, None], j[None, ::step]
+        sums = table[i + across, j + up] - table[i, j + up]
+        sums = sums - table[i + across, j] + table[i, j]
+        columns, rows = np.nonzero(sums == 0)
+        at_x = self.x0 + i[columns, 0] * self.cell
+        at_y = self.y0 + j[0, rows] * self.cell
+        return np.column_stack((at_x, at_y))
+
+    def _corners(
+        self, low: float, high: float, start: float, size: float, count: int
+    ) -> NDArray[np.intp]:
+        """Give the cells from which a window of a size stays between two ordinates."""
+        at = start + np.arange(count) * self.cell
+        return np.flatnonzero((at >= low) & (at + size <= high))
 
 
 def _pieces(segments: NDArray[np.float64], cells: NDArray[np.float64]) -> NDArray[np.float64]:

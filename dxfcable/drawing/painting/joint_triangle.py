@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.painting.label_ground import Label, LabelGround
 from dxfcable.drawing.painting.label_places import beside_line, readable_angle
-from dxfcable.drawing.painting.label_placing import put_labels
+from dxfcable.drawing.painting.label_placing import Group, put_labels
 from dxfcable.drawing.painting.naming import unique_parts
 from dxfcable.drawing.painting.scale_words import draw_force_scale
 from dxfcable.drawing.painting.sketch import Sketch
@@ -93,9 +93,8 @@ def draw_joint(
                 rotation=readable_angle(start, end),
             )
         )
-    ground = LabelGround(h)
-    ground.add(sketch.items)
-    put_labels(labels, sketch, ground)
+    ground = LabelGround(h, sketch.items)
+    put_labels([Group(labels=tuple(labels), sketch=sketch)], ground)
     title = (f"JOINT {anchorage.mark}", f"UNDER {view.formed.under}", "FORCES ON THE JOINT")
     draw_force_scale(sketch, part, plotting, per_paper, view.wording.force_unit, title)
     return sketch

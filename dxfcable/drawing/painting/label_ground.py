@@ -8,25 +8,29 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.items import Align, TextItem, VAlign
-from dxfcable.drawing.painting.labels import text_box, text_corners
+from dxfcable.drawing.painting import turned_boxes
 from dxfcable.drawing.painting.sketch import strokes
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable
+    from collections.abc import Iterable, Sequence
 
     from numpy.typing import NDArray
 
     from dxfcable.drawing.items import Item
-    from dxfcable.drawing.painting.free_place import OccupancyGrid
+    from dxfcable.drawing.painting.drawn_ground import DrawnGround
     from dxfcable.model import Point
 
-# A place further down the list costs one; so a drafter's line is worth going down 40 places,
-# a line of ours 1,000, another label any number.
-_ON_DRAWN = 40.0
-ON_STROKE = 1e3
+    Floats = NDArray[np.float64]
+
+# A place further down the list costs one. To keep clear of a drafter's line is worth going down
+# the whole list, of his texts and blocks more, of our own lines yet more; a label never covers
+# another one where that can be helped at all.
+ON_LINE = 300.0
+ON_BOX = 700.0
+ON_STROKE = 2e3
 ON_LABEL = 1e6
-_GAP = 0.12  # kept clear about each label, in text heights
-_TOUCH = 1e-6  # in text heights: touching is no crossing
+GAP = 0.15  # kept clear about each label, in text heights
+TOUCH = 1e-6  # in text heights: touching is no crossing
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -34,7 +38,9 @@ class Label:
     """A text with the places it may take, best first.
 
     `rotation`, `align` and `valign` follow from the object alone, never from the place taken,
-    so that a label keeps its look where a drafter moves it.
+    so that a label keeps its look where a drafter moves it. `target` is the object named, a
+    line or twice the same point: a leader runs to it from a label that stands off by more than
+    `leader_from` text heights; None where no leader is wanted.
     """
 
     id: str
@@ -45,137 +51,135 @@ class Label:
     align: Align = Align.CENTER
     valign: VAlign = VAlign.MIDDLE
     is_optional: bool = False
+    target: tuple[Point, Point] | None = None
+    leader_from: float = 1.25
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
 class Candidates:
-    """The places of a label with the cost of each; `boxes` have a gap about them, `bare` none."""
+    """The places of a label with the cost of each.
+
+    `rows` have a gap about them, `bare` none; `low` and `high` are the corners of the upright
+    boxes about the bare ones, `reach` those about all with their gaps.
+    """
 
     label: Label
-    boxes: NDArray[np.float64]
-    bare: NDArray[np.float64]
-    costs: NDArray[np.float64]
+    rows: Floats
+    bare: Floats
+    costs: Floats
+    low: Floats
+    high: Floats
+    reach: tuple[Floats, Floats]
 
 
 class LabelGround:
-    """What labels stay clear of: our linework, other labels, and the drafter's drawing.
+    """What labels stay clear of beside the drafter's drawing: our linework, other labels.
 
     Parameters
     ----------
     height : float
         Text height [length].
-    drawn : OccupancyGrid or None
-        The drafter's drawing about the labels.
+    items : iterable of Item, optional
+        What takes room from the beginning.
     """
 
-    def __init__(self, height: float, drawn: OccupancyGrid | None = None) -> None:
+    def __init__(self, height: float, items: Iterable[Item] = ()) -> None:
         self.height = height
-        self.drawn = drawn
-        self._strokes = np.zeros((0, 4))
-        self._labels = np.zeros((0, 4, 2))
+        self.strokes: Floats = turned_boxes.NO_ROWS
+        self.labels: Floats = turned_boxes.NO_ROWS
+        self.add(items)
+
+    @property
+    def touch(self) -> float:
+        """Overlap that is only touching [length]."""
+        return TOUCH * self.height
 
     def add(self, items: Iterable[Item]) -> None:
         """Take the room of items."""
         items = tuple(items)
-        self._strokes = np.vstack((self._strokes, strokes(items)))
-        corners = [text_corners(item) for item in items if isinstance(item, TextItem)]
-        if corners:
-            self._labels = np.concatenate((self._labels, np.array(corners)))
+        self.strokes = np.concatenate((self.strokes, turned_boxes.of_lines(strokes(items))))
+        texts = [item for item in items if isinstance(item, TextItem)]
+        self.labels = np.concatenate((self.labels, turned_boxes.of_texts(texts)))
 
-    def candidates(self, label: Label, wording: str) -> Candidates:
-        """Weigh the places of a label by all that does not move: order, linework, drawing.
+    def candidates(
+        self,
+        labels: Sequence[Label],
+        wordings: Sequence[str],
+        drawn: DrawnGround | None = None,
+    ) -> list[Candidates]:
+        """Weigh the places of labels by all that does not move: order, linework, drawing.
 
         Parameters
         ----------
-        label : Label
+        labels : sequence of Label
             What is to be placed.
-        wording : str
-            The text as it will be shown.
+        wordings : sequence of str
+            The texts as they will be shown.
+        drawn : DrawnGround, optional
+            The drafter's drawing about them.
 
         Returns
         -------
-        Candidates
+        list of Candidates
         """
-        boxes = self._candidates(label, wording, _GAP * self.height)
-        costs = np.arange(len(boxes), dtype=np.float64)
-        low, high = boxes.min(axis=(0, 1)), boxes.max(axis=(0, 1))
-        others = _near(self._labels.min(axis=1), self._labels.max(axis=1), low, high)
-        costs += ON_LABEL * self.overlaps(boxes, self._labels[others]).sum(axis=1)
-        first, second = self._strokes[:, :2], self._strokes[:, 2:]
-        lines = _near(np.minimum(first, second), np.maximum(first, second), low, high)
-        costs += ON_STROKE * self.crossings(boxes, self._strokes[lines])
-        if self.drawn is not None:
-            flat = np.hstack((boxes.min(axis=1), boxes.max(axis=1)))
-            costs += _ON_DRAWN * (self.drawn.taken(flat) > 0)
-        bare = self._candidates(label, wording, 0.0)
-        return Candidates(label=label, boxes=boxes, bare=bare, costs=costs)
+        if not labels:
+            return []
+        bare = [
+            turned_boxes.of_places(label, wording, self.height)
+            for label, wording in zip(labels, wordings, strict=True)
+        ]
+        ends = np.cumsum([len(rows) for rows in bare])
+        starts = ends - [len(rows) for rows in bare]
+        together = np.concatenate(bare)
+        bottom, top = turned_boxes.reaches(together)
+        rows = turned_boxes.grown(together, GAP * self.height)
+        low, high = turned_boxes.reaches(rows)
+        low, high = np.minimum.reduceat(low, starts), np.maximum.reduceat(high, starts)
+        costs = np.arange(ends[-1], dtype=np.float64) - np.repeat(starts, ends - starts)
+        for others, weight in ((self.strokes, ON_STROKE), (self.labels, ON_LABEL)):
+            which, other = turned_boxes.pairs_near(low, high, *turned_boxes.reaches(others))
+            costs += self._hits(rows, starts, ends, which, others[other], weight)
+        if drawn is not None:
+            which, other = drawn.near(low, high)
+            none = ((np.nan, np.nan),) * 2
+            named = np.array([label.target or none for label in labels])[which]
+            ends_named = (named[:, 0], named[:, 1])
+            weights = drawn.weights(other, ends_named, ON_LINE, ON_BOX)
+            costs += self._hits(rows, starts, ends, which, drawn.rows[other], weights)
+        return [
+            Candidates(
+                label=label,
+                rows=rows[a:b],
+                bare=bare[i],
+                costs=costs[a:b],
+                low=bottom[a:b],
+                high=top[a:b],
+                reach=(low[i], high[i]),
+            )
+            for i, (label, a, b) in enumerate(zip(labels, starts, ends, strict=True))
+        ]
 
-    def _candidates(self, label: Label, wording: str, gap: float) -> NDArray[np.float64]:
-        """Give the boxes of all places, (c, 4, 2), counter-clockwise."""
-        left, bottom, right, top = text_box(wording, self.height, label.align, label.valign)
-        left, bottom, right, top = left - gap, bottom - gap, right + gap, top + gap
-        turn = np.radians(label.rotation)
-        cos, sin = float(np.cos(turn)), float(np.sin(turn))
-        box = np.array([(left, bottom), (right, bottom), (right, top), (left, top)])
-        turned = box @ np.array([[cos, sin], [-sin, cos]])
-        return np.asarray(np.array(label.places)[:, None, :] + turned[None, :, :])
-
-    def overlaps(
-        self, boxes: NDArray[np.float64], others: NDArray[np.float64]
-    ) -> NDArray[np.bool_]:
-        """Tell for each box which others it overlaps (separating axes of two rectangles)."""
-        if not len(others):
-            return np.zeros((len(boxes), 0), dtype=np.bool_)
-        touch = _TOUCH * self.height
-        apart = np.zeros((len(boxes), len(others)), dtype=bool)
-        for side in (1, 3):
-            axes = _unit(boxes[:, side] - boxes[:, 0])
-            mine = np.einsum("ckx,cx->ck", boxes, axes)
-            theirs = np.einsum("okx,cx->cok", others, axes)
-            apart |= theirs.min(axis=2) >= mine.max(axis=1)[:, None] - touch
-            apart |= theirs.max(axis=2) <= mine.min(axis=1)[:, None] + touch
-            axes = _unit(others[:, side] - others[:, 0])
-            mine2 = np.einsum("ckx,ox->cok", boxes, axes)
-            theirs2 = np.einsum("okx,ox->ok", others, axes)
-            apart |= mine2.min(axis=2) >= theirs2.max(axis=1)[None, :] - touch
-            apart |= mine2.max(axis=2) <= theirs2.min(axis=1)[None, :] + touch
-        return ~apart
-
-    def crossings(
-        self, boxes: NDArray[np.float64], lines: NDArray[np.float64]
-    ) -> NDArray[np.float64]:
-        """Count for each box the lines through it (lines clipped in the box's own frame)."""
-        if not len(lines):
-            return np.zeros(len(boxes))
-        touch = _TOUCH * self.height
-        enter = np.zeros((len(boxes), len(lines)))
-        leave = np.ones_like(enter)
-        for side in (1, 3):
-            edge = boxes[:, side] - boxes[:, 0]
-            extent = np.hypot(edge[:, 0], edge[:, 1])[:, None]
-            axes = _unit(edge)
-            origin = np.einsum("cx,cx->c", boxes[:, 0], axes)[:, None]
-            start = axes @ lines[:, :2].T - origin
-            run = axes @ lines[:, 2:].T - origin - start
-            is_flat = np.abs(run) < touch
-            safe = np.where(is_flat, 1.0, run)
-            near, far = (touch - start) / safe, (extent - touch - start) / safe
-            is_between = (start > touch) & (start < extent - touch)
-            near, far = np.minimum(near, far), np.maximum(near, far)
-            enter = np.maximum(enter, np.where(is_flat, np.where(is_between, 0.0, 2.0), near))
-            leave = np.minimum(leave, np.where(is_flat, 1.0, far))
-        return np.asarray((enter < leave).sum(axis=1), dtype=np.float64)
-
-
-def _unit(vectors: NDArray[np.float64]) -> NDArray[np.float64]:
-    return np.asarray(vectors / np.hypot(vectors[:, 0], vectors[:, 1])[:, None])
-
-
-def _near(
-    low: NDArray[np.float64],
-    high: NDArray[np.float64],
-    corner: NDArray[np.float64],
-    opposite: NDArray[np.float64],
-) -> NDArray[np.bool_]:
-    """Tell which boxes reach into a rectangle."""
-    return np.asarray(((low < opposite) & (high > corner)).all(axis=1))
+    def _hits(
+        self,
+        rows: Floats,
+        starts: NDArray[np.intp],
+        ends: NDArray[np.intp],
+        which: NDArray[np.intp],
+        others: Floats,
+        weights: Floats | float,
+    ) -> Floats:
+        """Sum up for each place the weights of what lies near its label and under it."""
+        counts = (ends - starts)[which]
+        pair = np.repeat(np.arange(len(which)), counts)
+        place = np.arange(len(pair)) - np.repeat(np.cumsum(counts) - counts, counts)
+        place += np.repeat(starts[which], counts)
+        # Most pairs are far apart: tell so by the distance of their middles first.
+        size = np.abs(rows[:, 4]) + np.abs(rows[:, 5])
+        size2 = np.abs(others[:, 4]) + np.abs(others[:, 5])
+        reach = size[place] + size2[pair]
+        apart = np.abs(rows[place, 0] - others[pair, 0]) >= reach
+        apart |= np.abs(rows[place, 1] - others[pair, 1]) >= reach
+        place, pair = place[~apart], pair[~apart]
+        hit = turned_boxes.touching(rows[place], others[pair], self.touch)
+        found = np.broadcast_to(weights, len(which))[pair] * hit
+        return np.asarray(np.bincount(place, found, len(rows)), dtype=np.float64)

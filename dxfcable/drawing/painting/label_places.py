@@ -7,13 +7,20 @@ heights of its object.
 from __future__ import annotations
 
 import math
+from functools import lru_cache
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
     from dxfcable.model import Point
 
 _ROWS = (0.95, 2.1, 3.2)  # middle of a text from its line: beside it, and one and two rows on
-_SHARES = (0.5, 0.4, 0.6, 0.3, 0.7, 0.2, 0.8)
+_SHARES = (0.5, 0.42, 0.58, 0.34, 0.66, 0.26, 0.74, 0.18, 0.82)
+_MOST_OFF = 2.8
+_RISES = (0.95, 1.5, 2.1, 2.7, 3.3)
+_SLIDES = (0.0, -0.25, 0.25, -0.48, 0.48)
+_GAPS = (0.45, 0.9, 1.6, 2.3)
+_TOO_FAR = 1e9
+_ASIDE_RISES = (0.0, 0.7, 1.4, 2.1, 2.8)
 _STEPS = (0.0, 0.7, 1.4, 2.1, 2.5)
 _SHIFTS = (0.0, -0.35, 0.35, -0.7, 0.7, -1.05, 1.05, -1.4, 1.4, -1.75, 1.75, -2.1, 2.1)
 
@@ -57,8 +64,26 @@ def beside_line(start: Point, end: Point, height: float, *, first_side: int) -> 
     )
 
 
-def in_space(start: Point, end: Point, height: float) -> tuple[Point, ...]:
-    """List middles of a letter in the space above a piece of the cable, then below it."""
+def in_space(
+    start: Point, end: Point, height: float, *, first_side: int, rows: tuple[float, ...]
+) -> tuple[Point, ...]:
+    """List middles of a letter in the space beside a piece of the cable.
+
+    Parameters
+    ----------
+    start, end : Point
+        The piece.
+    height : float
+        Text height [length].
+    first_side : int
+        1 for above the cable first, -1 for below.
+    rows : tuple of float
+        Distances from the piece, the best first, in text heights.
+
+    Returns
+    -------
+    tuple of Point
+    """
     turn = math.radians(readable_angle(start, end))
     normal = -math.sin(turn), math.cos(turn)
     return tuple(
@@ -66,8 +91,8 @@ def in_space(start: Point, end: Point, height: float) -> tuple[Point, ...]:
             start[0] + share * (end[0] - start[0]) + side * row * height * normal[0],
             start[1] + share * (end[1] - start[1]) + side * row * height * normal[1],
         )
-        for side in (1, -1)
-        for row in (1.35, 2.2, 3.1)
+        for side in (first_side, -first_side)
+        for row in rows
         for share in _SHARES
     )
 
@@ -75,26 +100,49 @@ def in_space(start: Point, end: Point, height: float) -> tuple[Point, ...]:
 def about_point(
     at: Point, width: float, height: float, *, first_side: int = 1
 ) -> tuple[Point, ...]:
-    """List middles of level texts above, beside and below a point, or below first."""
-    x, y = at
-    beside = 0.5 * width + 0.5 * height
-    rows = [
-        (x + share * width, y + side * row * height)
-        for side in (first_side, -first_side)
-        for row in _ROWS
-        for share in (0.0, -0.25, 0.25, -0.48, 0.48)
+    """List middles of level texts about a point, within three heights: near ones first.
+
+    Parameters
+    ----------
+    at : Point
+        The point.
+    width, height : float
+        Of the text [length].
+    first_side : int
+        1 for above the point first, -1 for below.
+
+    Returns
+    -------
+    tuple of Point
+    """
+    return tuple(
+        (at[0] + across * height, at[1] + first_side * rise * height)
+        for across, rise in _about(0.5 * width / height)
+    )
+
+
+@lru_cache(maxsize=256)
+def _about(half: float) -> tuple[Point, ...]:
+    """List offsets from a point for a text of some half width, all in heights."""
+    over = [(2.0 * share * half, rise) for rise in _RISES for share in _SLIDES]
+    aside = [(half + gap, rise) for gap in _GAPS for rise in _ASIDE_RISES]
+    places = [
+        (round(_cost(across, turn * rise, half), 6), across, turn * rise)
+        for across, rise in (*over, *aside, *((-across, rise) for across, rise in aside))
+        for turn in (1, -1)
     ]
-    sides = [
-        (x + side * beside, y + rise * height)
-        for rise in (0.0, 1.0, -1.0, 2.0, -2.0, 3.0, -3.0)
-        for side in (1, -1)
-    ]
-    far = [
-        (x + side * (beside + 1.2 * height), y + rise * height)
-        for rise in (0.0, 1.2, -1.2, 2.4, -2.4)
-        for side in (1, -1)
-    ]
-    return tuple(rows + sides + far)
+    places.sort(key=lambda place: place[0])
+    return tuple((across, rise) for cost, across, rise in places if cost < _TOO_FAR)
+
+
+def _cost(across: float, rise: float, half: float) -> float:
+    """Weigh a place about a point: near, over it, on the first side, without a leader."""
+    off = math.hypot(max(abs(across) - half, 0.0), max(abs(rise) - 0.6, 0.0))
+    if off > _MOST_OFF:
+        return _TOO_FAR
+    is_beside = abs(across) > half
+    standing_off = 5.0 if off > 1.2 else 0.0
+    return 2.0 * off + 0.7 * abs(across) + 1.6 * (rise < 0) + standing_off - 2.0 * is_beside
 
 
 def upright_over(
@@ -140,5 +188,6 @@ def upright_over(
             for step in _STEPS
             for shift in _SHIFTS
             if abs(shift) * height <= reach
+            and math.hypot(clear / height + step, max(abs(shift) - 0.6, 0.0)) <= _MOST_OFF
         ]
     return tuple(places)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 import re
+from functools import lru_cache
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align, VAlign
@@ -55,8 +56,14 @@ def text_width(text: str, height: float) -> float:
     >>> round(text_width("133 kip", 1.0), 2)
     6.07
     """
+    return height * _advance(text)
+
+
+@lru_cache(maxsize=4096)
+def _advance(text: str) -> float:
+    """Give the width of a text of height one."""
     plain = _CODES.sub("\u00b0", text)
-    return height * sum(_WIDTHS.get(character, _WIDEST) for character in plain)
+    return sum([_WIDTHS.get(character, _WIDEST) for character in plain])
 
 
 _LEFT = {Align.LEFT: 0.0, Align.CENTER: -0.5, Align.RIGHT: -1.0}

@@ -1,22 +1,21 @@
-"""The schedule of one cable: rule and results, points, pieces, anchorages, and the caution."""
+"""The schedule of one cable: how its tables stand, their title, frame and caution."""
 
 from __future__ import annotations
 
+import itertools
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from dxfcable.drawing.items import Align
 from dxfcable.drawing.painting.labels import text_width
-from dxfcable.drawing.painting.naming import unique_parts
+from dxfcable.drawing.painting.schedule_tables import point_table, segment_table, summary_table
 from dxfcable.drawing.painting.sketch import Sketch
-from dxfcable.drawing.painting.text_table import ROW, Table, draw_table
-from dxfcable.model import RuleKind
+from dxfcable.drawing.painting.text_table import ROW, Table, draw_table, table_size
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.rounding import Rounder
-    from dxfcable.model import Anchorage
 
 CAUTION = (
     "Preliminary calculation aid. Results depend on the loads and geometry drawn. "
@@ -24,15 +23,28 @@ CAUTION = (
 )
 _LAYER = "table"
 _BETWEEN = 3.0  # between the tables, in text heights
+_UNDER = 1.2  # between tables one below the other
+_MOST_ROWS = 32  # of a table, before it is split
 _LONGEST = 190  # characters in a line of the caution
 
-_Row = tuple[str, tuple[str, ...]]
+_Columns = tuple[tuple[tuple[str, Table], ...], ...]
 
 
-def draw_schedule(
-    view: View, temperature: str, rounder: Rounder, held_texts: Mapping[str, str]
-) -> Sketch:
-    """Draw the schedule about its upper left corner as origin.
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Arrangement:
+    """How the tables of a schedule stand: columns from left to right, each from the top down.
+
+    Each table goes with its part of ids; `width` and `height` are those of the schedule with
+    title, caution and frame [length].
+    """
+
+    columns: _Columns
+    width: float
+    height: float
+
+
+def arrangements(view: View, temperature: str, held_texts: Mapping[str, str]) -> list[Arrangement]:
+    """Give the shapes that a cable's schedule may take, the usual ones first.
 
     Parameters
     ----------
@@ -40,6 +52,78 @@ def draw_schedule(
         The cable.
     temperature : str
         Reference temperature to print, or "".
+    held_texts : mapping of str to str
+        Texts that a drafter put in place of ours.
+
+    Returns
+    -------
+    list of Arrangement
+    """
+    h, name = view.height, f"{view.prefix}/schedule"
+    sizes: dict[tuple[str, str, int], tuple[float, float]] = {}
+
+    def size(key: str, table: Table) -> tuple[float, float]:
+        known = (key, table.part, len(table.rows))
+        if known not in sizes:
+            sizes[known] = table_size(f"{name}/{key}", table, h, held_texts)
+        return sizes[known]
+
+    found = []
+    for columns in _shapes(view, temperature):
+        measured = [[size(key, table) for key, table in column] for column in columns]
+        width = sum(max(wide for wide, _ in column) for column in measured)
+        width += _BETWEEN * h * (len(measured) - 1)
+        height = max(
+            sum(high for _, high in column) + _UNDER * h * (len(column) - 1) for column in measured
+        )
+        lines = broken(CAUTION, width, h)
+        width = max(width, *(text_width(line, h) for line in lines)) + 2.0 * h
+        height += (4.0 + ROW * len(lines)) * h
+        found.append(Arrangement(columns=columns, width=width, height=height))
+    return found
+
+
+def _shapes(view: View, temperature: str) -> list[_Columns]:
+    """Give the ways in which the tables may stand; long ones in parts side by side."""
+    summary = ("summary", summary_table(view, temperature))
+    points, pieces = point_table(view), segment_table(view)
+    count = -(-len(points.rows) // _MOST_ROWS)
+    shapes: list[_Columns] = []
+    for many in (1,) if count == 1 else (count, count + 1, 1):
+        first, second = _split("point", points, many), _split("segment", pieces, many)
+        shapes += [
+            ((summary,), *((table,) for table in (*first, *second))),
+            ((summary,), *zip(first, second, strict=True)),
+        ]
+        if many == 1:
+            shapes += [
+                ((summary, first[0]), (second[0],)),
+                ((summary, first[0], second[0]),),
+            ]
+    return shapes
+
+
+def _split(key: str, table: Table, lots: int) -> list[tuple[str, Table]]:
+    """Split a long table into about equal ones to stand side by side."""
+    count = len(table.rows)
+    bounds = [count * number // lots for number in range(lots + 1)]
+    return [
+        (key, replace(table, rows=table.rows[start:end], part=f"-{number}" if number > 1 else ""))
+        for number, (start, end) in enumerate(itertools.pairwise(bounds), start=1)
+    ]
+
+
+def draw_schedule(
+    view: View, arrangement: Arrangement, rounder: Rounder, held_texts: Mapping[str, str]
+) -> Sketch:
+    """Draw the schedule about its upper left corner as origin.
+
+    Parameters
+    ----------
+    view : View
+        The cable.
+    arrangement : Arrangement
+        Its tables and how they stand.
     rounder : Rounder
         Rounds coordinates about the origin.
     held_texts : mapping of str to str
@@ -53,16 +137,14 @@ def draw_schedule(
     sketch = Sketch(rounder, held_texts, name)
     margin = h
     top = -margin - 1.5 * h
-    title = f"CABLE {view.formed.mark}"
-    sketch.text(f"{name}/title", _LAYER, title, (margin, top), h)
+    sketch.text(f"{name}/title", _LAYER, f"CABLE {view.formed.mark}", (margin, top), h)
     x, bottom = margin, top
-    for key, table in (
-        ("summary", _summary(view, temperature)),
-        ("point", _points(view)),
-        ("segment", _segments(view)),
-    ):
-        right, low = draw_table(sketch, f"{name}/{key}", table, (x, top - 0.5 * h), h)
-        x, bottom = right + _BETWEEN * h, min(bottom, low)
+    for column in arrangement.columns:
+        right, y = x, top - 0.5 * h
+        for key, table in column:
+            edge, low = draw_table(sketch, f"{name}/{key}", table, (x, y), h)
+            right, y, bottom = max(right, edge), low - _UNDER * h, min(bottom, low)
+        x = right + _BETWEEN * h
     right = x - _BETWEEN * h
     for number, line in enumerate(broken(CAUTION, right - margin, h), start=1):
         bottom -= ROW * h
@@ -94,172 +176,3 @@ def _broken(text: str, width: float, height: float) -> list[str]:
         else:
             lines.append(word)
     return lines
-
-
-def rule_words(view: View) -> str:
-    """Say the governing rule in words."""
-    rule, wording = view.formed.rule, view.wording
-    match rule.kind:
-        case RuleKind.MAX_TENSION:
-            return f"LARGEST TENSION {wording.load(rule.value)}"
-        case RuleKind.PULL:
-            return f"PULL {wording.load(rule.value)}"
-        case RuleKind.SAG:
-            return f"SAG {wording.length(rule.value)}"
-        case RuleKind.LOW_POINT:
-            return f"LOW POINT {wording.level(rule.value)}"
-        case RuleKind.LENGTH:
-            return f"LENGTH {wording.length(rule.value)}"
-        case RuleKind.CUT_LENGTH:
-            return f"UNSTRESSED LENGTH {wording.length(rule.value)}"
-        case RuleKind.THROUGH:
-            if rule.point is None:
-                return "THROUGH A POINT"
-            first = view.formed.nodes[0]
-            level = wording.level(rule.point[1] + first.elevation - first.y)
-            return f"THROUGH X {wording.length(rule.point[0] - first.x)}, {level}"
-
-
-def _summary(view: View, temperature: str) -> Table:
-    """Pair what governs and what follows with its words."""
-    formed, wording = view.formed, view.wording
-    level = f"{formed.level.upper()}{' (ASSUMED)' if formed.level_is_assumed else ''}"
-    at = f" AT {formed.governs.support}" if formed.governs.support else f" {formed.governs.end}"
-    weight = "WEIGHTLESS"
-    if formed.weight:
-        case = f" (CASE {formed.weight_case})" if formed.weight_case else ""
-        weight = f"{wording.weight(formed.weight)}{case}"
-    rows: list[tuple[str, str, str]] = [
-        ("status", "STATUS", formed.status.upper()),
-        ("rule", "RULE", rule_words(view)),
-        ("under", "UNDER", formed.under),
-        ("level", "LEVEL", level),
-        *_pulls(view),
-        (
-            "largest-tension",
-            "LARGEST TENSION",
-            f"{wording.force(formed.max_tension)}, {formed.governs.segment}{at}",
-        ),
-        ("sag", "SAG", wording.length(formed.sag)),
-        ("length", "LENGTH", wording.length(formed.length)),
-        ("unstressed", "UNSTRESSED LENGTH", wording.length(formed.unstressed_length)),
-        ("weight", "CABLE WEIGHT", weight),
-        ("ea", "EA", wording.load(formed.ea) if formed.ea else "INEXTENSIBLE"),
-        (
-            "supports",
-            "SUPPORTS",
-            "HELD RIGID" if formed.supports_rigid else "MOVE WITH THEIR STAYS",
-        ),
-    ]
-    if view.cable.strand:
-        rows.append(("strand", "STRAND", view.cable.strand))
-    if formed.capacity is not None:
-        used = "" if formed.utilization is None else f", UTILIZATION {formed.utilization:.2f}"
-        rows.append(("capacity", "CAPACITY", f"{wording.load(formed.capacity)}{used}"))
-    if temperature:
-        rows.append(("temperature", "REFERENCE TEMPERATURE", temperature))
-    rows += _support_loads(view)
-    for name, anchorage in view.anchorages:
-        rows += _anchorage_rows(view, name, anchorage)
-    return Table(
-        columns=("name", "value"),
-        head=("", ""),
-        aligns=(Align.LEFT, Align.LEFT),
-        rows=tuple((key, (name, value)) for key, name, value in rows),
-    )
-
-
-def _pulls(view: View) -> list[tuple[str, str, str]]:
-    """Give the pull, span by span where spans differ."""
-    formed, force = view.formed, view.wording.force
-    if formed.horizontal is not None:
-        return [("pull", "PULL H", force(formed.horizontal))]
-    return [
-        (f"pull-{i}", f"PULL H {span.start} - {span.end}", force(span.horizontal))
-        for i, span in enumerate(formed.spans, start=1)
-    ]
-
-
-def _support_loads(view: View) -> list[tuple[str, str, str]]:
-    """Show the loads that stand at a support and not on the cable."""
-    marks = {support.key: support.mark for support in view.cable.supports}
-    return [
-        (
-            f"support-load-{number}",
-            f"DRAWN AT {marks.get(key, '')}, NOT ON CABLE",
-            ", ".join(f"{case} {view.wording.load(value)}" for case, value in load.cases),
-        )
-        for number, (key, load) in enumerate(view.cable.support_loads, start=1)
-    ]
-
-
-def _anchorage_rows(view: View, name: str, anchorage: Anchorage) -> list[tuple[str, str, str]]:
-    """List mast, stays, what is left over, and anchors with the factors reached."""
-    force, mark = view.wording.force, anchorage.mark
-    rows: list[tuple[str, str, str]] = []
-    if anchorage.mast is not None:
-        rows.append((f"{name}-mast", f"{mark} MAST", force(anchorage.mast)))
-    for number, stay in enumerate(anchorage.stays, start=1):
-        word = "STAY" if len(anchorage.stays) == 1 else f"STAY {number}"
-        rows.append((f"{name}-stay-{number}", f"{mark} {word}", force(stay)))
-    if anchorage.head_shear:
-        rows.append((f"{name}-shear", f"{mark} HEAD SHEAR", force(anchorage.head_shear)))
-    if anchorage.base_moment:
-        moment = view.wording.moment(anchorage.base_moment)
-        rows.append((f"{name}-moment", f"{mark} BASE MOMENT", moment))
-    if any(anchorage.residual):
-        x, y = anchorage.residual
-        rows.append((f"{name}-residual", f"{mark} NOT HELD X, Y", f"{force(x)}, {force(y)}"))
-    parts = unique_parts([anchor.mark for anchor in anchorage.anchors], "anchor")
-    for part, anchor in zip(parts, anchorage.anchors, strict=True):
-        key, word = f"{name}-{part}", f"ANCHOR {anchor.mark or mark}"
-        both = f"H {force(anchor.horizontal)}, UPLIFT {force(anchor.uplift)}"
-        rows.append((key, word, both))
-        factors = (("SLIDING", anchor.sliding_factor), ("UPLIFT", anchor.uplift_factor))
-        reached = ", ".join(f"{kind} {value:.2f}" for kind, value in factors if value is not None)
-        if reached:
-            rows.append((f"{key}-factor", f"{word} FACTOR", reached))
-    return rows
-
-
-def _points(view: View) -> Table:
-    """List nodes with place, height, load and hanger."""
-    wording, nodes = view.wording, view.formed.nodes
-    rows: list[_Row] = []
-    for name, node in zip(view.node_names, nodes, strict=True):
-        cells = (
-            node.mark,
-            wording.length(node.x - nodes[0].x),
-            wording.level(node.elevation),
-            "" if node.is_support else wording.load(node.load),
-            "" if node.hanger is None else wording.length(node.hanger),
-        )
-        rows.append((name, cells))
-    return Table(
-        columns=("mark", "x", "elevation", "load", "hanger"),
-        head=("POINT", "X", "LEVEL" if wording.has_datum else "FROM LEFT", "LOAD", "HANGER"),
-        aligns=(Align.LEFT, *(Align.RIGHT,) * 4),
-        rows=tuple(rows),
-    )
-
-
-def _segments(view: View) -> Table:
-    """List pieces with their tensions and lengths."""
-    force, length = view.wording.force, view.wording.length
-    rows: list[_Row] = []
-    for number, piece in enumerate(view.formed.segments, start=1):
-        cells = (
-            piece.name,
-            force(piece.tension_left),
-            force(piece.tension_right),
-            f"{round(piece.angle, 2) + 0.0:.2f}%%d",
-            length(piece.length),
-            length(piece.unstressed_length),
-        )
-        rows.append((str(number), cells))
-    return Table(
-        columns=("name", "left", "right", "angle", "length", "unstressed"),
-        head=("PIECE", "T LEFT", "T RIGHT", "SLOPE", "LENGTH", "UNSTRESSED"),
-        aligns=(Align.LEFT, *(Align.RIGHT,) * 5),
-        rows=tuple(rows),
-    )

@@ -19,6 +19,7 @@ from dxfcable.drawing.items import (
     TriangleItem,
     VAlign,
 )
+from dxfcable.drawing.painting import turned_boxes
 from dxfcable.drawing.painting.labels import text_corners
 
 if TYPE_CHECKING:
@@ -111,7 +112,7 @@ class Sketch:
 
     def wording(self, name: str, text: str) -> str:
         """Give the text that an item will show: the drafter's where held, ASCII always."""
-        return escape(self.held_texts.get(name, text))
+        return shown(self.held_texts.get(name, text))
 
     def text(
         self,
@@ -142,13 +143,21 @@ class Sketch:
 
     def bounds(self) -> Bounds:
         """Give the rectangle about everything, texts with the room they may take."""
-        xy = np.array([p for item in self.items for p in item_points(item)], dtype=np.float64)
+        texts = [item for item in self.items if isinstance(item, TextItem)]
+        rest = [p for i in self.items if not isinstance(i, TextItem) for p in item_points(i)]
+        low, high = turned_boxes.reaches(turned_boxes.of_texts(texts))
+        xy = np.concatenate((np.array(rest, dtype=np.float64).reshape(-1, 2), low, high))
         low, high = xy.min(axis=0), xy.max(axis=0)
         return float(low[0]), float(low[1]), float(high[0]), float(high[1])
 
     def moved(self, by: Point, rounder: Rounder) -> list[Item]:
         """Give the items moved, and rounded where they come to lie."""
         return [moved(item, by, rounder) for item in self.items]
+
+
+def shown(text: str) -> str:
+    """Give a text in ASCII."""
+    return text if text.isascii() and text.isprintable() else escape(text)
 
 
 def item_points(item: Item) -> Sequence[Point]:

@@ -7,27 +7,60 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align
 from dxfcable.drawing.painting.labels import text_width
+from dxfcable.drawing.painting.sketch import shown
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
     from dxfcable.drawing.painting.sketch import Sketch
     from dxfcable.model import Point
 
 _LAYER = "table"
 ROW = 1.8  # from row to row, in text heights
 _GUTTER = 1.5  # between columns
+_HEAD, _FOOT = 0.3, 0.5  # more below the head, below the last row
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Table:
     """Rows of a table; `rows` pairs the part of ids with its cells.
 
-    `columns` names the columns for the ids, `head` for the reader ("" all: no head).
+    `columns` names the columns for the ids, `head` for the reader ("" all: no head). `part`
+    sets the ids of head and rule apart where one table is drawn as several.
     """
 
     columns: tuple[str, ...]
     head: tuple[str, ...]
     aligns: tuple[Align, ...]
     rows: tuple[tuple[str, tuple[str, ...]], ...]
+    part: str = ""
+
+
+def _lines(table: Table) -> list[tuple[str, tuple[str, ...]]]:
+    """Give the head, if there is one, and the rows."""
+    head = [(f"head{table.part}", table.head)] if any(table.head) else []
+    return [*head, *table.rows]
+
+
+def _widths(name: str, table: Table, height: float, held_texts: Mapping[str, str]) -> list[float]:
+    """Give the widths of the columns, as wide as their texts may be."""
+    widths = []
+    for index, column in enumerate(table.columns):
+        texts = [
+            shown(held_texts.get(f"{name}/{key}/{column}", cells[index]))
+            for key, cells in _lines(table)
+        ]
+        widths.append(max((text_width(text, height) for text in texts), default=0.0))
+    return widths
+
+
+def table_size(
+    name: str, table: Table, height: float, held_texts: Mapping[str, str]
+) -> tuple[float, float]:
+    """Give width and height of a table as `draw_table` draws it [length]."""
+    widths = _widths(name, table, height, held_texts)
+    rise = ROW * len(_lines(table)) + _FOOT + (_HEAD if any(table.head) else 0.0)
+    return sum(widths) + _GUTTER * height * (len(widths) - 1), rise * height
 
 
 def draw_table(
@@ -53,14 +86,10 @@ def draw_table(
     tuple of float
         Right and bottom end [length].
     """
-    lines = [(key, cells) for key, cells in table.rows]
-    if any(table.head):
-        lines.insert(0, ("head", table.head))
+    lines = _lines(table)
     edges = [top_left[0]]
-    for index, column in enumerate(table.columns):
-        texts = [sketch.wording(f"{name}/{key}/{column}", cells[index]) for key, cells in lines]
-        widest = max((text_width(text, height) for text in texts), default=0.0)
-        edges.append(edges[-1] + widest + _GUTTER * height)
+    for width in _widths(name, table, height, sketch.held_texts):
+        edges.append(edges[-1] + width + _GUTTER * height)
     right = edges[-1] - _GUTTER * height
     y = top_left[1]
     for key, cells in lines:
@@ -73,8 +102,8 @@ def draw_table(
                     x = edges[index + 1] - _GUTTER * height
                 cell = f"{name}/{key}/{column}"
                 sketch.text(cell, _LAYER, text, (x, y), height, align=align)
-        if key == "head":
+        if key == f"head{table.part}":
             rule = y - 0.5 * height
-            sketch.line(f"{name}/rule", _LAYER, (top_left[0], rule), (right, rule))
-            y -= 0.3 * height
-    return right, y - 0.5 * height
+            sketch.line(f"{name}/rule{table.part}", _LAYER, (top_left[0], rule), (right, rule))
+            y -= _HEAD * height
+    return right, y - _FOOT * height
