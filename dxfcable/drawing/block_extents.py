@@ -60,6 +60,8 @@ class BlockExtents:
         xs: list[float] = []
         ys: list[float] = []
         for record in range(first + 1, last):
+            if self._drawing.kinds[record] == b"ATTDEF":
+                continue  # shown by the attributes of each insert, in places of their own
             if self._drawing.kinds[record] == b"INSERT":
                 box = self._inserted(record, depth - 1)
                 xs += [box[0], box[2]]

@@ -276,6 +276,8 @@ def _words(batch: _Batch) -> Floats:
         words = batch.drawing.data[batch.tags.values[k] : batch.tags.ends[k]]
         lines[slots[k]] += words.count(b"\\P")
         length[slots[k]] += len(words)
+    said = length > 0
+    heads, length, lines = heads[said], length[said], lines[said]
     is_long = batch.kinds[heads] == b"MTEXT"
     height = batch.first(heads, 40, 0.0)
     width = length / lines * height * _WIDTH

@@ -44,13 +44,13 @@ class LayerLook:
 # Pen widths are of the ISO 128 groups; profile heavy, construction lines thin (common practice).
 LOOKS = {
     "profile": LayerLook(5, 50),
-    "closing_string": LayerLook(8, 18),
+    "closing_string": LayerLook(7, 18),
     "force_diagram": LayerLook(7, 25),
-    "letters": LayerLook(3, 25),
+    "letters": LayerLook(7, 25),
     "tension": LayerLook(5, 25),
     "elevation": LayerLook(7, 25),
     "reaction": LayerLook(1, 25),
-    "hanger": LayerLook(8, 18),
+    "hanger": LayerLook(7, 18),
     "table": LayerLook(7, 25),
     "revision": LayerLook(6, 35),
 }
