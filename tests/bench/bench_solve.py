@@ -7,6 +7,7 @@ times belong to the machine. Both sides are whole fresh processes, run in turn.
 from __future__ import annotations
 
 import argparse
+import compileall
 import sys
 import tempfile
 from dataclasses import dataclass
@@ -14,6 +15,7 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parents[2]))
 
+import dxfcable
 from tests.bench.measuring import Run, RunError, interleaved, measure
 
 READ_AND_SAVE = (
@@ -79,6 +81,8 @@ def line(case: Case, ours: Run, bare: Run, size: float) -> str:
 
 def main() -> int:
     """Print the table; 1 if a command failed, whatever the times."""
+    # As an installed package is: some machines forbid Python to write compiled modules itself.
+    compileall.compile_dir(Path(dxfcable.__file__).parent, quiet=2)
     parser = argparse.ArgumentParser(description=(__doc__ or "").splitlines()[0])
     parser.add_argument("--count", type=int, action="append", help="entities; repeatable")
     parser.add_argument("--runs", type=int, default=3, help="measured runs of each side")
