@@ -7,8 +7,75 @@ below. Signs: x to the right, y up, loads positive down, tension positive.
 from __future__ import annotations
 
 import enum
-import math
 from dataclasses import dataclass, field
+
+from dxfcable.results import (
+    Anchorage,
+    AnchorForce,
+    CableRevisions,
+    Clearance,
+    Envelope,
+    Extreme,
+    ForceDiagram,
+    FormedCable,
+    Governs,
+    JointSide,
+    Movement,
+    Node,
+    PointChange,
+    PointRange,
+    Reaction,
+    Revised,
+    RevisionRow,
+    Segment,
+    SegmentRange,
+    Solution,
+    SpanShape,
+    State,
+    SupportShift,
+)
+
+__all__ = [
+    "Anchor",
+    "AnchorForce",
+    "Anchorage",
+    "Cable",
+    "CableRevisions",
+    "Clearance",
+    "Envelope",
+    "Extreme",
+    "Finding",
+    "ForceDiagram",
+    "FormedCable",
+    "Governs",
+    "JointSide",
+    "Layout",
+    "LoadPoint",
+    "LoadSymbol",
+    "Mast",
+    "Movement",
+    "Node",
+    "Origin",
+    "Point",
+    "PointChange",
+    "PointRange",
+    "Reaction",
+    "Rectangle",
+    "Revised",
+    "RevisionRow",
+    "Rule",
+    "RuleKind",
+    "Segment",
+    "SegmentRange",
+    "Severity",
+    "Solution",
+    "SpanShape",
+    "State",
+    "Stay",
+    "Support",
+    "SupportKind",
+    "SupportShift",
+]
 
 Point = tuple[float, float]
 
@@ -234,193 +301,4 @@ class Layout:
     masts: tuple[Mast, ...] = ()
     stays: tuple[Stay, ...] = ()
     text_height: float | None = None
-    findings: tuple[Finding, ...] = ()
-
-
-# --- what follows from it -----------------------------------------------------------------
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Node:
-    """A support or load point of a formed cable.
-
-    `y` is the drawing's ordinate, `elevation` the same in the datum (or y without one).
-    `hanger` is the length down to the deck or drawn point, None where there is no hanger;
-    `hanger_foot` is the ordinate of its lower end.
-    """
-
-    mark: str
-    x: float
-    y: float
-    elevation: float
-    load: float
-    is_support: bool
-    support: int | None = None
-    hanger: float | None = None
-    hanger_foot: float | None = None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Segment:
-    """One piece between neighbouring nodes; angles in degrees, rising to the right positive."""
-
-    name: str
-    start: Point
-    end: Point
-    tension_left: float
-    tension_right: float
-    angle_left: float
-    angle_right: float
-    length: float
-    unstressed_length: float
-
-    @property
-    def tension(self) -> float:
-        """Largest tension in the piece [force]."""
-        return max(self.tension_left, self.tension_right)
-
-    @property
-    def angle(self) -> float:
-        """Slope of the chord of the piece [degrees]."""
-        return math.degrees(math.atan2(self.end[1] - self.start[1], self.end[0] - self.start[0]))
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Reaction:
-    """What a support gives to one cable: vertical up positive, horizontal outward positive."""
-
-    support: int
-    mark: str
-    horizontal: float
-    vertical: float
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class SpanShape:
-    """One span: its pull, its sag and where sag and low point lie [drawing coordinates]."""
-
-    start: str
-    end: str
-    horizontal: float
-    sag: float
-    sag_at: Point  # on the curve; the closing string is `sag` above it
-    low_point: Point
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class ForceDiagram:
-    """The force polygon of one span in force units, load line from (0, 0) downwards.
-
-    Attributes
-    ----------
-    letters : tuple of str
-        Bow's letters of the spaces, one more than there are loads.
-    load_line : tuple of float
-        Ordinates of the letters on the load line; the first is 0, down loads go negative.
-    pole : Point
-        Right of the load line for a hanging cable.
-    closing : float
-        Ordinate where the closing ray meets the load line.
-    """
-
-    letters: tuple[str, ...]
-    load_line: tuple[float, ...]
-    pole: Point
-    closing: float
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class AnchorForce:
-    """What one anchor takes: horizontal pull, uplift positive; factors None where not stated."""
-
-    mark: str
-    at: Point
-    horizontal: float
-    uplift: float
-    sliding_factor: float | None = None
-    uplift_factor: float | None = None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class JointSide:
-    """One side of a joint's force polygon: the force on the joint [force]."""
-
-    name: str
-    force: Point
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Anchorage:
-    """Equilibrium of a support that has a mast or a stay, all cables at it summed.
-
-    `mast` (compression negative) and `stays` are None and empty where not drawn.
-    `head_shear` and `base_moment` belong to a mast without a stay, `residual` to a stay
-    without a mast. `sides` close to a polygon when the joint is in equilibrium.
-    """
-
-    support: int
-    mark: str
-    at: Point
-    mast: float | None
-    stays: tuple[float, ...]
-    anchors: tuple[AnchorForce, ...]
-    head_shear: float = 0.0
-    base_moment: float = 0.0
-    residual: Point = (0.0, 0.0)
-    sides: tuple[JointSide, ...] = ()
-    mast_foot: Point | None = None
-    stay_feet: tuple[Point, ...] = ()
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Governs:
-    """Where the largest tension acts."""
-
-    segment: str
-    end: str  # "left" or "right"
-    support: str | None
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class FormedCable:
-    """A cable formed under one combination; see the module's units and signs.
-
-    `horizontal` is None where spans differ; `utilization` None without a capacity. `curves`
-    holds one polyline a span for a cable with weight: its nodes, and so many points between
-    them that it is true to a millimetre; empty where the nodes alone are the shape.
-    """
-
-    mark: str
-    status: str
-    rule: Rule
-    under: str
-    level: str
-    level_is_assumed: bool
-    supports_rigid: bool
-    weight: float
-    weight_case: str | None
-    ea: float | None
-    capacity: float | None
-    utilization: float | None
-    loads_source: str
-    horizontal: float | None
-    max_tension: float
-    governs: Governs
-    sag: float
-    length: float
-    unstressed_length: float
-    nodes: tuple[Node, ...]
-    segments: tuple[Segment, ...]
-    spans: tuple[SpanShape, ...]
-    reactions: tuple[Reaction, ...]
-    diagrams: tuple[ForceDiagram, ...]
-    curves: tuple[tuple[Point, ...], ...] = ()
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
-class Solution:
-    """All cables of a drawing formed, in the order of `Layout.cables`."""
-
-    cables: tuple[FormedCable, ...]
-    anchorages: tuple[Anchorage, ...] = ()
     findings: tuple[Finding, ...] = ()
