@@ -18,11 +18,12 @@ FORMED, CUT = "formed", "cut"
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class RecordedSupport:
-    """An end of the cable, where it stood when the cable was formed."""
+    """An end of the cable: where it stood last, and where it stood when the cable was formed."""
 
     mark: str
     x: float
     y: float
+    formed: Point
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

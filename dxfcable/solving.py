@@ -9,8 +9,8 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from dxfcable.anchorages import anchorages
-from dxfcable.curves import curves
 from dxfcable.errors import LayoutError, RuleError
+from dxfcable.gathering import gather, is_rigid
 from dxfcable.governing import (
     Forming,
     combination_for,
@@ -18,36 +18,25 @@ from dxfcable.governing import (
     refuse_later_work,
     rule_for,
     rule_value,
-    weight_case,
     weight_under,
 )
-from dxfcable.hangers import hanger_feet
 from dxfcable.model import (
     Cable,
     Finding,
     FormedCable,
-    Governs,
     Layout,
-    Node,
-    Reaction,
     Rule,
     RuleKind,
-    Segment,
     Severity,
     Solution,
-    SpanShape,
 )
 from dxfcable.quantities import format_force
 from dxfcable.remarks import Remarks
 from dxfcable.statics.catenary_forming import form_catenary
 from dxfcable.statics.combinations import combine
-from dxfcable.statics.force_diagram import force_diagram
 from dxfcable.statics.forming import form
-from dxfcable.units import convert
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
-
     from dxfcable.curves import Shape
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
@@ -135,7 +124,7 @@ def _form(
         remarks.stop("rule", text, origin=rule.origin, raw=rule.text)
         return None
     _remark(layout, cable, shape, settings, remarks)
-    return _gather(layout, cable, rule, combination, shape, settings, remarks)
+    return gather(layout, cable, rule, combination, shape, settings, remarks)
 
 
 def _refusal(layout: Layout, rule: Rule, error: Exception) -> str:
@@ -150,145 +139,6 @@ def _refusal(layout: Layout, rule: Rule, error: Exception) -> str:
         f"MAX_TENSION {format_force(rule.value, unit, _EXACT)} cannot be met: the least tension "
         f"possible under these loads is {more}{format_force(least, unit, _EXACT)}"
     )
-
-
-def _gather(
-    layout: Layout,
-    cable: Cable,
-    rule: Rule,
-    combination: Combination,
-    shape: Shape,
-    settings: Settings,
-    remarks: Remarks,
-) -> FormedCable:
-    """Put one cable's result together."""
-    diagram = force_diagram(shape)
-    names = tuple(f"{letter}O" for letter in diagram.letters)
-    governing = shape.governing_segment
-    ends = {(0, "left"): cable.supports[0], (len(names) - 1, "right"): cable.supports[-1]}
-    support = ends.get((governing, shape.governing_end))
-    span = SpanShape(
-        start=cable.supports[0].mark,
-        end=cable.supports[-1].mark,
-        horizontal=shape.horizontal,
-        sag=shape.sag,
-        sag_at=shape.sag_point,
-        low_point=shape.low_point,
-    )
-    return FormedCable(
-        mark=cable.mark,
-        status="formed",
-        rule=rule,
-        under=combination.text,
-        level=combination.level,
-        level_is_assumed=combination.level_is_assumed,
-        supports_rigid=_is_rigid(layout, cable),
-        weight=cable.weight,
-        weight_case=weight_case(cable),
-        ea=cable.ea,
-        capacity=cable.capacity,
-        utilization=_utilization(layout, cable, shape, settings, remarks),
-        loads_source="+".join(sorted({load.source for load in cable.loads})),
-        horizontal=shape.horizontal,
-        max_tension=shape.max_tension,
-        governs=Governs(
-            segment=names[governing],
-            end=shape.governing_end,
-            support=support.mark if support else None,
-        ),
-        sag=shape.sag,
-        length=shape.length,
-        unstressed_length=shape.unstressed_length,
-        nodes=_nodes(cable, shape, remarks),
-        segments=_segments(shape, names),
-        spans=(span,),
-        reactions=_reactions(cable, shape),
-        diagrams=(diagram,),
-        curves=curves(shape, convert(1.0, "mm", layout.length_unit)),
-    )
-
-
-def _utilization(
-    layout: Layout, cable: Cable, shape: Shape, settings: Settings, remarks: Remarks
-) -> float | None:
-    """Hold the largest tension against the capacity, if one is stated."""
-    if cable.capacity is None:
-        return None
-    utilization = shape.max_tension / cable.capacity
-    if utilization > 1.0:
-        unit, digits = layout.force_unit or "", settings.show.force_digits
-        remarks.say(
-            "over-capacity",
-            f"cable {cable.mark}: largest tension "
-            f"{format_force(shape.max_tension, unit, digits)} is over its CAPACITY "
-            f"{format_force(cable.capacity, unit, digits)} (utilization {utilization:.3f})",
-            Severity.WARNING,
-        )
-    return utilization
-
-
-def _reactions(cable: Cable, shape: Shape) -> tuple[Reaction, ...]:
-    """Return what each support gives."""
-    ends = (cable.supports[0], cable.supports[-1])
-    forces = (shape.reaction_left, shape.reaction_right)
-    return tuple(
-        Reaction(support=s.key, mark=s.mark, horizontal=h, vertical=v)
-        for s, (h, v) in zip(ends, forces, strict=True)
-    )
-
-
-def _segments(shape: Shape, names: Sequence[str]) -> tuple[Segment, ...]:
-    """Return the pieces; without weight both ends of one are alike."""
-    points = [(float(a), float(b)) for a, b in zip(shape.x, shape.y, strict=True)]
-    return tuple(
-        Segment(
-            name=name,
-            start=points[k],
-            end=points[k + 1],
-            tension_left=float(shape.tensions_left[k]),
-            tension_right=float(shape.tensions_right[k]),
-            angle_left=float(shape.angles_left[k]),
-            angle_right=float(shape.angles_right[k]),
-            length=float(shape.lengths[k]),
-            unstressed_length=float(shape.unstressed_lengths[k]),
-        )
-        for k, name in enumerate(names)
-    )
-
-
-def _nodes(cable: Cable, shape: Shape, remarks: Remarks) -> tuple[Node, ...]:
-    """Return supports and load points with their hangers, left to right."""
-    datum = cable.datum or 0.0
-    x, y = shape.x.tolist(), shape.y.tolist()
-    feet = hanger_feet(cable, y[1:-1], remarks)
-    inner = [
-        Node(
-            mark=load.mark,
-            x=a,
-            y=b,
-            elevation=b + datum,
-            load=weight,
-            is_support=False,
-            hanger=None if foot is None else b - foot,
-            hanger_foot=foot,
-        )
-        for load, a, b, weight, foot in zip(
-            cable.loads, x[1:-1], y[1:-1], shape.loads.tolist(), feet, strict=True
-        )
-    ]
-    first, last = (
-        Node(
-            mark=support.mark,
-            x=support.x,
-            y=support.y,
-            elevation=support.y + datum,
-            load=0.0,
-            is_support=True,
-            support=support.key,
-        )
-        for support in (cable.supports[0], cable.supports[-1])
-    )
-    return first, *inner, last
 
 
 def _remark(
@@ -310,9 +160,9 @@ def _remark(
             f"cable {cable.mark}: sag over span is {ratio:.4f}, outside {low:g} to {high:g}",
         )
     keys = {s.key for s in cable.supports}
-    if any(stay.support in keys for stay in layout.stays) and _is_rigid(layout, cable):
+    if any(stay.support in keys for stay in layout.stays) and is_rigid(layout, cable):
         remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid")
-    if any(stay.support in keys for stay in layout.stays) and not _is_rigid(layout, cable):
+    if any(stay.support in keys for stay in layout.stays) and not is_rigid(layout, cable):
         remarks.say(
             "stays-give-later",
             f"cable {cable.mark}: the stretch of its stays acts in states after forming; the "
@@ -323,10 +173,3 @@ def _remark(
             "inextensible",
             f"cable {cable.mark}: no EA is given; the unstressed length is taken as the length",
         )
-
-
-def _is_rigid(layout: Layout, cable: Cable) -> bool:
-    """Whether no stay of this cable's supports states its stiffness."""
-    keys = {s.key for s in cable.supports}
-    stays = [s for s in layout.stays if s.support in keys]
-    return not any(s.anchor is not None and s.anchor.ea is not None for s in stays)

@@ -1,0 +1,200 @@
+"""A shape that statics found, put together as the model's cable: nodes, pieces, reactions."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from dxfcable.curves import curves
+from dxfcable.governing import weight_case
+from dxfcable.hangers import hanger_feet
+from dxfcable.model import (
+    Cable,
+    FormedCable,
+    Governs,
+    Layout,
+    Node,
+    Reaction,
+    Rule,
+    Segment,
+    Severity,
+    SpanShape,
+)
+from dxfcable.quantities import format_force
+from dxfcable.recorded import FORMED
+from dxfcable.statics.force_diagram import bow_letters, force_diagram
+from dxfcable.units import convert
+
+if TYPE_CHECKING:
+    from dxfcable.curves import Shape
+    from dxfcable.remarks import Remarks
+    from dxfcable.settings import Settings
+    from dxfcable.statics.combinations import Combination
+
+
+def gather(
+    layout: Layout,
+    cable: Cable,
+    rule: Rule,
+    combination: Combination,
+    shape: Shape,
+    settings: Settings,
+    remarks: Remarks,
+    *,
+    status: str = FORMED,
+    supports_rigid: bool | None = None,
+) -> FormedCable:
+    """Put one cable's result together.
+
+    Parameters
+    ----------
+    status : str
+        `formed`, or `cut` where its unstressed lengths are kept.
+    supports_rigid : bool, optional
+        Whether no support moves after forming; found from the layout where it is not told.
+    """
+    diagram = force_diagram(shape)
+    span = SpanShape(
+        start=cable.supports[0].mark,
+        end=cable.supports[-1].mark,
+        horizontal=shape.horizontal,
+        sag=shape.sag,
+        sag_at=shape.sag_point,
+        low_point=shape.low_point,
+    )
+    return FormedCable(
+        mark=cable.mark,
+        status=status,
+        rule=rule,
+        under=combination.text,
+        level=combination.level,
+        level_is_assumed=combination.level_is_assumed,
+        supports_rigid=is_rigid(layout, cable) if supports_rigid is None else supports_rigid,
+        weight=cable.weight,
+        weight_case=weight_case(cable),
+        ea=cable.ea,
+        capacity=cable.capacity,
+        utilization=_utilization(layout, cable, shape, settings, remarks),
+        loads_source="+".join(sorted({load.source for load in cable.loads})),
+        horizontal=shape.horizontal,
+        max_tension=shape.max_tension,
+        governs=governs(cable, shape),
+        sag=shape.sag,
+        length=shape.length,
+        unstressed_length=shape.unstressed_length,
+        nodes=nodes(cable, shape, remarks),
+        segments=segments(shape),
+        spans=(span,),
+        reactions=reactions(cable, shape),
+        diagrams=(diagram,),
+        curves=curves(shape, convert(1.0, "mm", layout.length_unit)),
+    )
+
+
+def _utilization(
+    layout: Layout, cable: Cable, shape: Shape, settings: Settings, remarks: Remarks
+) -> float | None:
+    """Hold the largest tension against the capacity, if one is stated."""
+    if cable.capacity is None:
+        return None
+    utilization = shape.max_tension / cable.capacity
+    if utilization > 1.0:
+        unit, digits = layout.force_unit or "", settings.show.force_digits
+        remarks.say(
+            "over-capacity",
+            f"cable {cable.mark}: largest tension "
+            f"{format_force(shape.max_tension, unit, digits)} is over its CAPACITY "
+            f"{format_force(cable.capacity, unit, digits)} (utilization {utilization:.3f})",
+            Severity.WARNING,
+        )
+    return utilization
+
+
+def reactions(cable: Cable, shape: Shape) -> tuple[Reaction, ...]:
+    """Return what each support gives."""
+    ends = (cable.supports[0], cable.supports[-1])
+    forces = (shape.reaction_left, shape.reaction_right)
+    return tuple(
+        Reaction(support=s.key, mark=s.mark, horizontal=h, vertical=v)
+        for s, (h, v) in zip(ends, forces, strict=True)
+    )
+
+
+def names(shape: Shape) -> tuple[str, ...]:
+    """Name the pieces by their rays."""
+    return tuple(f"{letter}O" for letter in bow_letters(shape.lengths.size))
+
+
+def governs(cable: Cable, shape: Shape) -> Governs:
+    """Say where the largest tension acts."""
+    governing = shape.governing_segment
+    ends = {(0, "left"): cable.supports[0], (shape.lengths.size - 1, "right"): cable.supports[-1]}
+    support = ends.get((governing, shape.governing_end))
+    return Governs(
+        segment=names(shape)[governing],
+        end=shape.governing_end,
+        support=support.mark if support else None,
+    )
+
+
+def segments(shape: Shape) -> tuple[Segment, ...]:
+    """Return the pieces; without weight both ends of one are alike."""
+    points = [(float(a), float(b)) for a, b in zip(shape.x, shape.y, strict=True)]
+    return tuple(
+        Segment(
+            name=name,
+            start=points[k],
+            end=points[k + 1],
+            tension_left=float(shape.tensions_left[k]),
+            tension_right=float(shape.tensions_right[k]),
+            angle_left=float(shape.angles_left[k]),
+            angle_right=float(shape.angles_right[k]),
+            length=float(shape.lengths[k]),
+            unstressed_length=float(shape.unstressed_lengths[k]),
+        )
+        for k, name in enumerate(names(shape))
+    )
+
+
+def nodes(cable: Cable, shape: Shape, remarks: Remarks) -> tuple[Node, ...]:
+    """Return supports and load points with their hangers, left to right."""
+    datum = cable.datum or 0.0
+    x, y = shape.x.tolist(), shape.y.tolist()
+    feet = hanger_feet(cable, y[1:-1], remarks)
+    inner = [
+        Node(
+            mark=load.mark,
+            x=a,
+            y=b,
+            elevation=b + datum,
+            load=weight,
+            is_support=False,
+            hanger=None if foot is None else b - foot,
+            hanger_foot=foot,
+        )
+        for load, a, b, weight, foot in zip(
+            cable.loads, x[1:-1], y[1:-1], shape.loads.tolist(), feet, strict=True
+        )
+    ]
+    first, last = (
+        Node(
+            mark=support.mark,
+            x=at,
+            y=height,
+            elevation=height + datum,
+            load=0.0,
+            is_support=True,
+            support=support.key,
+        )
+        for support, at, height in (
+            (cable.supports[0], x[0], y[0]),
+            (cable.supports[-1], x[-1], y[-1]),
+        )
+    )
+    return first, *inner, last
+
+
+def is_rigid(layout: Layout, cable: Cable) -> bool:
+    """Whether no stay of this cable's supports states its stiffness."""
+    keys = {s.key for s in cable.supports}
+    stays = [s for s in layout.stays if s.support in keys]
+    return not any(s.anchor is not None and s.anchor.ea is not None for s in stays)
