@@ -1,7 +1,8 @@
 """Load cases and linear combinations of them: "1.2D + 1.6L".
 
 Loads are combined first and the cable is solved once for each combination, since the tension
-of a cable does not add.
+of a cable does not add. Texts that stand for several combinations: `expansion`; loads in part
+of the span: `patterns`.
 """
 
 from __future__ import annotations
@@ -52,12 +53,25 @@ class Combination:
         `service` or `factored`.
     level_is_assumed : bool
         Whether the level was only inferred from the factors.
+    patterns : tuple of str
+        For each term the part of the span that it acts on (`patterns.PATTERNS`), "" for all
+        of it; empty where no term has one.
     """
 
     text: str
     terms: tuple[tuple[str, float], ...]
     level: str
     level_is_assumed: bool
+    patterns: tuple[str, ...] = ()
+
+    @property
+    def placed_terms(self) -> tuple[tuple[str, float, str], ...]:
+        """Case, factor and pattern of each term."""
+        patterns = self.patterns or ("",) * len(self.terms)
+        return tuple(
+            (case, factor, pattern)
+            for (case, factor), pattern in zip(self.terms, patterns, strict=True)
+        )
 
 
 def parse(
@@ -97,11 +111,9 @@ def parse(
     >>> parse("1.2D + 1.6L", ["D", "L"]).terms
     (('D', 1.2), ('L', 1.6))
     """
-    if level not in (None, SERVICE, FACTORED):
-        message = f"level must be {SERVICE} or {FACTORED}, not {level}"
-        raise ValueError(message)
-    prefix = _PREFIX.match(text)
-    body = text[prefix.end() :].strip() if prefix else text.strip()
+    require_level(level)
+    body, typed = split_level(text)
+    stated = typed or level
     if _ALTERNATIVES.search(body):
         message = (
             f'"{text.strip()}" stands for several combinations; alternatives belong to checking, '
@@ -109,14 +121,14 @@ def parse(
         )
         raise AlternativesError(message)
     terms = tuple(
-        (_case(name, text, known_cases, aliases or {}), factor) for name, factor in _terms(body)
+        (known_case(name, text, known_cases, aliases or {}), factor)
+        for name, factor in _terms(body)
     )
     names = [case for case, _ in terms]
     for case in names:
         if names.count(case) > 1:
             message = f'"{text.strip()}" names case {case} twice: write it once with its factor.'
             raise CombinationError(message)
-    stated = prefix.group(1).lower() if prefix else level
     return Combination(
         text=body,
         terms=terms,
@@ -144,10 +156,11 @@ def assumed_level(terms: Sequence[tuple[str, float]]) -> str:
     >>> assumed_level([("D", 1.0), ("L", 0.75)]), assumed_level([("D", 0.9), ("W", -1.0)])
     ('service', 'factored')
     """
-    factors = dict(terms)
-    over_one = any(abs(factor) > 1.0 for factor in factors.values())
-    lateral = "D" in factors and any(abs(factors.get(case, 0.0)) == 1.0 for case in ("W", "E"))
-    return FACTORED if over_one or factors.get("D") == 0.9 or lateral else SERVICE
+    over_one = any(abs(factor) > 1.0 for _, factor in terms)
+    reduced = ("D", 0.9) in terms
+    beside_dead = any(case == "D" for case, _ in terms)
+    lateral = any(case in ("W", "E") and abs(factor) == 1.0 for case, factor in terms)
+    return FACTORED if over_one or reduced or (beside_dead and lateral) else SERVICE
 
 
 def combine(
@@ -161,12 +174,17 @@ def combine(
         For each point its cases and their values, down positive [force]. A case that a point
         does not carry counts as zero there; one that it carries twice adds.
     combination : Combination
-        What to combine them by.
+        What to combine them by; without patterns, which need stations (`combine_states`).
 
     Returns
     -------
     (n,) array of float
         Loads, down positive [force].
+
+    Raises
+    ------
+    ValueError
+        If a term acts on a part of the span only.
 
     Examples
     --------
@@ -174,6 +192,9 @@ def combine(
     >>> combine(points, parse("1.2D + 1.6L", ["D", "L"])).tolist()
     [20.0, 24.0]
     """
+    if any(combination.patterns):
+        message = f'"{combination.text}" loads parts of the span: combine it with stations'
+        raise ValueError(message)
     factors = dict(combination.terms)
     sums = [sum(factors.get(case, 0.0) * value for case, value in point) for point in cases]
     return np.array(sums, dtype=np.float64)
@@ -203,6 +224,74 @@ def default_under(cases: Sequence[str]) -> str | None:
     return next((case for case in ("D", "G") if case in names), None)
 
 
+def split_level(text: str) -> tuple[str, str | None]:
+    """Split the prefix that states a level from a combination.
+
+    Parameters
+    ----------
+    text : str
+        As typed.
+
+    Returns
+    -------
+    tuple of (str, str or None)
+        The combination without prefix and outer blanks; `service`, `factored` or None.
+
+    Examples
+    --------
+    >>> split_level("service: D + 0.75L"), split_level("D")
+    (('D + 0.75L', 'service'), ('D', None))
+    """
+    prefix = _PREFIX.match(text)
+    if prefix is None:
+        return text.strip(), None
+    return text[prefix.end() :].strip(), prefix.group(1).lower()
+
+
+def require_level(level: str | None) -> None:
+    """Raise ValueError if a level is neither `service` nor `factored` nor left open."""
+    if level not in (None, SERVICE, FACTORED):
+        message = f"level must be {SERVICE} or {FACTORED}, not {level}"
+        raise ValueError(message)
+
+
+def known_case(name: str, text: str, known: Sequence[str], aliases: Mapping[str, str]) -> str:
+    """Find the case that a name in a combination stands for.
+
+    Parameters
+    ----------
+    name : str
+        As typed.
+    text : str
+        The whole combination, for the message.
+    known : sequence of str
+        Cases that some load carries. A case of that very name wins over an alias.
+    aliases : mapping of str to str
+        Other names of cases.
+
+    Returns
+    -------
+    str
+        One of `known`.
+
+    Raises
+    ------
+    CombinationError
+        If no load carries it; the message lists the cases there are.
+
+    Examples
+    --------
+    >>> known_case("DL", "1.2DL", ["D"], {"DL": "D"})
+    'D'
+    """
+    for candidate in (name, aliases.get(name)):
+        if candidate is not None and candidate in known:
+            return candidate
+    listed = ", ".join(dict.fromkeys(known)) or "none"
+    message = f'"{text.strip()}" names case {name}, which no load carries; cases here: {listed}.'
+    raise CombinationError(message)
+
+
 def _terms(body: str) -> list[tuple[str, float]]:
     """Split into names and signed factors; every character must belong to a term."""
     terms: list[tuple[str, float]] = []
@@ -219,13 +308,3 @@ def _terms(body: str) -> list[tuple[str, float]]:
         terms.append((name, float(factor or 1.0) * (-1.0 if sign == "-" else 1.0)))
         at = match.end()
     return terms
-
-
-def _case(name: str, text: str, known: Sequence[str], aliases: Mapping[str, str]) -> str:
-    """Return the known case that a name stands for, or say which are known."""
-    for candidate in (name, aliases.get(name)):
-        if candidate is not None and candidate in known:
-            return candidate
-    listed = ", ".join(dict.fromkeys(known)) or "none"
-    message = f'"{text.strip()}" names case {name}, which no load carries; cases here: {listed}.'
-    raise CombinationError(message)

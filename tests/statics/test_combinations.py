@@ -11,6 +11,7 @@ from dxfcable.errors import DxfcableError
 from dxfcable.statics.combinations import (
     AlternativesError,
     CombinationError,
+    assumed_level,
     combine,
     default_under,
     parse,
@@ -106,6 +107,17 @@ def test_an_alias_never_hides_a_case_of_its_own_name() -> None:
 def test_an_alias_of_a_case_that_no_load_carries_is_refused() -> None:
     with pytest.raises(CombinationError, match="names case LL"):
         parse("LL", ["D"], aliases=ALIASES)
+
+
+def test_a_combination_to_form_under_is_of_the_whole_span() -> None:
+    combination = parse("1.2D + 1.6L", CASES)
+    assert combination.patterns == ()
+    assert combination.placed_terms == (("D", 1.2, ""), ("L", 1.6, ""))
+
+
+def test_a_level_counts_every_term_of_a_case_in_several_places() -> None:
+    assert assumed_level([("D", 1.0), ("L", 1.6), ("L", 0.5)]) == "factored"
+    assert assumed_level([("D", 0.9), ("D", 0.5)]) == "factored"
 
 
 @pytest.mark.parametrize("text", ["D + 0.2D", "1.2DL + 1.2SDL"])
