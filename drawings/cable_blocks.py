@@ -71,18 +71,18 @@ def load_block(sheet: Sheet, cases: Sequence[str]) -> None:
     _attribute(block, sheet, "CLAMPED", (0.5 * h, -10.2 * h), shown=False)
 
 
-def data_block(sheet: Sheet) -> None:
+def data_block(sheet: Sheet, tags: Sequence[str] = DATA_TAGS) -> None:
     """Define CABLE-DATA: a small table, names on the left, values on the right."""
     block = sheet.doc.blocks.new("CABLE-DATA")
     h = sheet.height
     row, split, width = 2.0 * h, 11.0 * h, 21.0 * h
     style = {"style": STYLE}
-    for k in range(len(DATA_TAGS) + 1):
+    for k in range(len(tags) + 1):
         block.add_line((0, -k * row), (width, -k * row))
-    bottom = -len(DATA_TAGS) * row
+    bottom = -len(tags) * row
     for x in (0.0, split, width):
         block.add_line((x, 0), (x, bottom))
-    for k, tag in enumerate(DATA_TAGS):
+    for k, tag in enumerate(tags):
         y = -(k + 1) * row + 0.5 * h
         name = tag.replace("_", " ")
         block.add_text(name, height=h, dxfattribs=style).set_placement((0.6 * h, y))

@@ -1,4 +1,4 @@
-"""Write the five demonstration drawings beside this script: `python drawings/make_drawings.py`.
+"""Write the six demonstration drawings beside this script: `python drawings/make_drawings.py`.
 
 The projects, places, people and numbers are our own invention; nothing of this was ever
 designed or built. Every run writes the same bytes.
@@ -22,7 +22,14 @@ def drawings() -> dict[str, Drawing]:
     """Draw all of them; the key is the file name."""
     if str(HERE.parent) not in sys.path:  # run as a script, only this folder is on the path
         sys.path.insert(0, str(HERE.parent))
-    from drawings import canopy_roof, creek_footbridge, long_walkway, pipe_crossing, twin_views
+    from drawings import (
+        canopy_roof,
+        creek_footbridge,
+        deck_plan,
+        long_walkway,
+        pipe_crossing,
+        twin_views,
+    )
 
     return {
         "canopy_roof.dxf": canopy_roof.draw(),
@@ -30,6 +37,7 @@ def drawings() -> dict[str, Drawing]:
         "pipe_crossing_r12.dxf": pipe_crossing.draw(),
         "twin_views_mm.dxf": twin_views.draw(),
         "long_walkway_60.dxf": long_walkway.draw(),
+        "deck_plan.dxf": deck_plan.draw(),
     }
 
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from dxfcable.errors import LayoutError
@@ -11,11 +12,11 @@ from dxfcable.model import (
     Anchorage,
     AnchorForce,
     Finding,
-    FormedCable,
     Layout,
     Mast,
     Origin,
     Point,
+    Reaction,
     Severity,
     Stay,
     Support,
@@ -24,7 +25,7 @@ from dxfcable.statics.combinations import combine
 from dxfcable.statics.joints import Joint, anchor_force, joint_equilibrium
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Mapping, Sequence
 
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
@@ -32,20 +33,38 @@ if TYPE_CHECKING:
 _SAME_FOOT = 1e-9
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class MovedHead:
+    """A mast's head in a state: where it stands, and how its stays share the pull.
+
+    `shares` are fractions of the stays' summed horizontal component.
+    """
+
+    at: Point
+    shares: tuple[float, ...]
+
+
 def anchorages(
     layout: Layout,
-    formed: Sequence[FormedCable],
-    combinations: Sequence[Combination],
+    reactions: Sequence[Sequence[Reaction]],
+    loads: Mapping[int, float],
     settings: Settings,
+    *,
+    heads: Mapping[int, MovedHead] | None = None,
+    state: str = "",
 ) -> tuple[tuple[Anchorage, ...], list[Finding]]:
     """Find the forces at each support that has a mast or a stay.
 
     Parameters
     ----------
-    formed : sequence of FormedCable
-        One for each cable of the layout, in its order.
-    combinations : sequence of Combination
-        What each was formed under; loads at a support's x are combined alike.
+    reactions : sequence of sequences of Reaction
+        Of each cable, left to right.
+    loads : mapping of int to float
+        Loads at a support itself by its key, down positive [force].
+    heads : mapping of int to MovedHead, optional
+        Supports that do not stand where they are drawn, by key.
+    state : str
+        Combination that findings name, "" for the formed state.
 
     Returns
     -------
@@ -59,80 +78,107 @@ def anchorages(
         stays = [s for s in layout.stays if s.support == support.key]
         if not masts and not stays:
             continue
+        place = _Place(support=support, masts=masts, stays=stays, state=state)
         if len(masts) > 1:
-            findings.append(
-                _finding(
-                    "two-masts",
-                    Severity.ERROR,
-                    f"support {support.mark} at ({support.x:g}, {support.y:g}) has "
-                    f"{len(masts)} masts",
-                    masts[1].origin,
-                    "Draw one mast from it.",
-                )
-            )
+            text = f"{place} has {len(masts)} masts"
+            remedy = "Draw one mast from it."
+            findings.append(_finding("two-masts", Severity.ERROR, text, masts[1].origin, remedy))
             continue
-        joint = _joint(layout, formed, combinations, support, masts, stays, findings)
+        head = (heads or {}).get(support.key)
+        if head is not None:
+            place = replace(place, support=replace(support, x=head.at[0], y=head.at[1]))
+        joint = _joint(place, reactions, loads.get(support.key, 0.0), head, findings)
         if joint is not None:
-            result.append(_anchorage(support, masts, stays, joint, settings, findings))
+            result.append(_anchorage(place, joint, settings, findings))
     return tuple(result), findings
 
 
+def loads_at_supports(layout: Layout, combinations: Sequence[Combination]) -> dict[int, float]:
+    """Combine the loads that stand at supports and not on a cable.
+
+    Parameters
+    ----------
+    combinations : sequence of Combination
+        One a cable; a case that a combination does not name counts as zero.
+
+    Returns
+    -------
+    dict of int to float
+        Down positive [force], by the support's key.
+    """
+    result: dict[int, list[float]] = {}
+    for cable, combination in zip(layout.cables, combinations, strict=True):
+        for key, point in cable.support_loads:
+            result.setdefault(key, []).extend(combine([point.cases], combination).tolist())
+    return {key: math.fsum(values) for key, values in result.items()}
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Place:
+    """A support with its members, and the state that is looked at."""
+
+    support: Support
+    masts: Sequence[Mast]
+    stays: Sequence[Stay]
+    state: str
+
+    def __str__(self) -> str:
+        """Name the support and the state for a finding."""
+        under = f", under {self.state}," if self.state else ""
+        return f"support {self.support.mark} at ({self.support.x:g}, {self.support.y:g}){under}"
+
+    @property
+    def head(self) -> Point:
+        """Where the members meet."""
+        return self.support.x, self.support.y
+
+
 def _joint(
-    layout: Layout,
-    formed: Sequence[FormedCable],
-    combinations: Sequence[Combination],
-    support: Support,
-    masts: Sequence[Mast],
-    stays: Sequence[Stay],
+    place: _Place,
+    reactions: Sequence[Sequence[Reaction]],
+    load: float,
+    moved: MovedHead | None,
     findings: list[Finding],
 ) -> Joint | None:
     """Solve one support."""
     pulls: list[Point] = []
-    load = 0.0
-    for cable, result, combination in zip(layout.cables, formed, combinations, strict=True):
-        for reaction in result.reactions:
-            if reaction.support == support.key:
-                is_left = reaction is result.reactions[0]
+    for of_cable in reactions:
+        for reaction in of_cable:
+            if reaction.support == place.support.key:
+                is_left = reaction is of_cable[0]
                 across = reaction.horizontal if is_left else -reaction.horizontal
                 pulls.append((across, -reaction.vertical))
-        own = [point.cases for key, point in cable.support_loads if key == support.key]
-        for cases in own:
-            known = [pair for pair in cases if pair[0] in dict(combination.terms)]
-            load += math.fsum(combine([known], combination).tolist())
-    head = (support.x, support.y)
+    stays, masts = place.stays, place.masts
+    shares: list[float | None] = [stay.anchor.share if stay.anchor else None for stay in stays]
+    if moved is not None and len(stays) > 1:
+        shares = list(moved.shares)
     try:
         return joint_equilibrium(
             pulls,
             load=load,
-            mast=_down(head, masts[0].foot) if masts else None,
-            stays=[_down(head, stay.foot) for stay in stays],
-            shares=[stay.anchor.share if stay.anchor else None for stay in stays],
+            mast=_down(place.head, masts[0].foot) if masts else None,
+            stays=[_down(place.head, stay.foot) for stay in stays],
+            shares=shares,
         )
     except (LayoutError, ValueError) as error:
         origin = stays[-1].origin if stays else masts[0].origin
-        findings.append(
-            _finding("joint", Severity.ERROR, f"support {support.mark}: {error}", origin)
-        )
+        findings.append(_finding("joint", Severity.ERROR, f"{place}: {error}", origin))
         return None
 
 
 def _anchorage(
-    support: Support,
-    masts: Sequence[Mast],
-    stays: Sequence[Stay],
-    joint: Joint,
-    settings: Settings,
-    findings: list[Finding],
+    place: _Place, joint: Joint, settings: Settings, findings: list[Finding]
 ) -> Anchorage:
     """Gather one support's result and what has to be said of it."""
-    _remarks(support, masts, stays, joint, findings)
+    _remarks(place, joint, findings)
+    support, masts, stays = place.support, place.masts, place.stays
     return Anchorage(
         support=support.key,
         mark=support.mark,
-        at=(support.x, support.y),
+        at=place.head,
         mast=joint.mast,
         stays=joint.stays,
-        anchors=tuple(_anchors(support, masts, stays, joint, settings, findings)),
+        anchors=tuple(_anchors(place, joint, settings, findings)),
         head_shear=joint.head_shear,
         base_moment=joint.base_moment,
         residual=joint.residual,
@@ -143,15 +189,10 @@ def _anchorage(
 
 
 def _anchors(
-    support: Support,
-    masts: Sequence[Mast],
-    stays: Sequence[Stay],
-    joint: Joint,
-    settings: Settings,
-    findings: list[Finding],
+    place: _Place, joint: Joint, settings: Settings, findings: list[Finding]
 ) -> list[AnchorForce]:
     """Sum the members at each foot, and hold the block's factors against what is asked."""
-    head = (support.x, support.y)
+    head, masts, stays = place.head, place.masts, place.stays
     members: list[tuple[Point, Anchor | None, Point, Origin]] = [
         (stay.foot, stay.anchor, force, stay.origin)
         for stay, force in zip(stays, joint.stay_feet, strict=True)
@@ -181,18 +222,24 @@ def _anchors(
         )
         result.append(force)
         if anchor is not None:
-            _factors(anchor, force, settings, origin, findings)
+            _factors(anchor, force, settings, origin, place.state, findings)
     return result
 
 
 def _factors(
-    anchor: Anchor, force: AnchorForce, settings: Settings, origin: Origin, findings: list[Finding]
+    anchor: Anchor,
+    force: AnchorForce,
+    settings: Settings,
+    origin: Origin,
+    state: str,
+    findings: list[Finding],
 ) -> None:
     """Warn of an anchor whose factor is not reached."""
     asked = (
         ("sliding", force.sliding_factor, anchor.fs_slide, settings.anchor.sliding),
         ("uplift", force.uplift_factor, anchor.fs_uplift, settings.anchor.uplift),
     )
+    under = f" under {state}" if state else ""
     for name, reached, stated, default in asked:
         wanted = stated if stated is not None else default
         if reached is not None and wanted and reached < wanted:
@@ -201,21 +248,15 @@ def _factors(
                     "anchor-factor",
                     Severity.WARNING,
                     f"anchor {anchor.mark} at ({force.at[0]:g}, {force.at[1]:g}): factor on "
-                    f"{name} {reached:.3f} is under the {wanted:g} asked for",
+                    f"{name}{under} is {reached:.3f}, less than the {wanted:g} asked for",
                     anchor.origin if anchor.origin.line else origin,
                 )
             )
 
 
-def _remarks(
-    support: Support,
-    masts: Sequence[Mast],
-    stays: Sequence[Stay],
-    joint: Joint,
-    findings: list[Finding],
-) -> None:
+def _remarks(place: _Place, joint: Joint, findings: list[Finding]) -> None:
     """Say what an engineer must see at a support."""
-    where = f"support {support.mark} at ({support.x:g}, {support.y:g})"
+    masts, stays = place.masts, place.stays
     said = []
     if masts and not stays and joint.head_shear:
         said.append(
@@ -237,7 +278,7 @@ def _remarks(
     if joint.mast_in_tension:
         said.append(("mast-in-tension", "has a mast in tension"))
     origin = stays[0].origin if stays else masts[0].origin
-    findings += [_finding(code, Severity.WARNING, f"{where} {text}", origin) for code, text in said]
+    findings += [_finding(code, Severity.WARNING, f"{place} {text}", origin) for code, text in said]
 
 
 def _down(head: Point, foot: Point) -> Point:

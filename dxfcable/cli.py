@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import gc
+import os
 import sys
 from pathlib import Path
 from typing import Annotated
@@ -9,9 +11,11 @@ from typing import Annotated
 import typer
 
 from dxfcable import __version__
+from dxfcable.commands.plain import PlainCommand, PlainGroup
 
 app = typer.Typer(
     name="dxfcable",
+    cls=PlainGroup,
     help="Solve cable roofs, footbridges and crossings on the drafter's own DXF.",
     no_args_is_help=True,
     pretty_exceptions_enable=False,
@@ -38,6 +42,17 @@ SettingsFile = Annotated[
 PlotScale = Annotated[
     str | None, typer.Option("--plot-scale", help='Such as 1:100 or 1/8"=1\'-0".')
 ]
+Combos = Annotated[
+    list[str] | None,
+    typer.Option("--combo", help='Combination to check, as "1.2D + 1.6(L or S)"; repeatable.'),
+]
+Fresh = Annotated[
+    bool, typer.Option("--fresh", help="Forget labels moved and texts edited by hand.")
+]
+LoadTable = Annotated[
+    Path | None, typer.Option("--loads", help="Load table (CSV) that overrules the drawing.")
+]
+DryRun = Annotated[bool, typer.Option("--dry-run", help="Solve and print, write nothing.")]
 
 _CAUTION = (
     "Exit codes: 0 done, 1 done and something that an engineer must see, 2 not done, "
@@ -67,8 +82,9 @@ def _root(
 
 
 @app.command(
+    cls=PlainCommand,
     epilog="Examples: dxfcable starter office.dxf --units m; "
-    "dxfcable starter office.dxf --units ft --settings dxfcable.toml"
+    "dxfcable starter office.dxf --units ft --settings dxfcable.toml",
 )
 def starter(
     output: Annotated[Path, typer.Argument(metavar="OUT.dxf", help="The drawing to write.")],
@@ -84,7 +100,10 @@ def starter(
     raise typer.Exit(make_starter(output, units, settings, as_json=as_json))
 
 
-@app.command(epilog="Examples: dxfcable read roof.dxf; dxfcable read roof.dxf --loads loads.csv")
+@app.command(
+    cls=PlainCommand,
+    epilog="Examples: dxfcable read roof.dxf; dxfcable read roof.dxf --loads loads.csv",
+)
 def read(
     drawings: Drawings,
     loads: Annotated[
@@ -108,18 +127,17 @@ def read(
 
 
 @app.command(
+    cls=PlainCommand,
     epilog="Examples: dxfcable solve roof.dxf -o solved.dxf; "
     "dxfcable solve bridge.dxf --in-place --backup --sag 6.5; "
-    "dxfcable solve *.dxf -o solved/ --json"
+    "dxfcable solve *.dxf -o solved/ --json",
 )
 def solve(
     drawings: Drawings,
     output: Output = None,
     in_place: InPlace = False,
     backup: Backup = False,
-    dry_run: Annotated[
-        bool, typer.Option("--dry-run", help="Solve and print, write nothing.")
-    ] = False,
+    dry_run: DryRun = False,
     max_tension: Annotated[str | None, typer.Option(help="Rule: largest tension anywhere.")] = None,
     sag: Annotated[str | None, typer.Option(help="Rule: greatest drop below the string.")] = None,
     low_point: Annotated[
@@ -132,11 +150,17 @@ def solve(
     under: Annotated[
         str | None, typer.Option(help='Combination to form under, as "D + L".')
     ] = None,
-    loads: Annotated[
-        Path | None, typer.Option("--loads", help="Load table (CSV) that overrules the drawing.")
-    ] = None,
-    fresh: Annotated[
-        bool, typer.Option("--fresh", help="Forget labels moved and texts edited by hand.")
+    loads: LoadTable = None,
+    fresh: Fresh = False,
+    combo: Combos = None,
+    cut: Annotated[
+        bool, typer.Option("--cut", help="The cables are cut: from now on lengths are kept.")
+    ] = False,
+    reform: Annotated[
+        bool, typer.Option("--reform", help="Discard cables that are cut and form them anew.")
+    ] = False,
+    watch: Annotated[
+        bool, typer.Option("--watch", help="Solve again at each save of the drawing.")
     ] = False,
     units: Units = None,
     force_unit: ForceUnit = None,
@@ -167,14 +191,121 @@ def solve(
         under=under,
         loads=loads,
         fresh=fresh,
+        combos=tuple(combo or ()),
+        cut=cut,
+        reform=reform,
     )
     target = Target(output=output, in_place=in_place, backup=backup, dry_run=dry_run)
+    if watch:
+        from dxfcable.commands.watching import watch_all
+
+        raise typer.Exit(watch_all(drawings, asked, target))
     raise typer.Exit(solve_all(drawings, asked, target))
 
 
 @app.command(
+    cls=PlainCommand,
+    epilog="Examples: dxfcable revise issued.dxf --hold cut-length -o revised.dxf; "
+    "dxfcable revise issued.dxf --hold rule --loads loads.csv -o revised.dxf; "
+    'dxfcable revise issued.dxf --hold cut-length --delta-t "-30 K" --dry-run',
+)
+def revise(
+    drawings: Drawings,
+    hold: Annotated[
+        str, typer.Option("--hold", help="rule: form anew; cut-length: keep unstressed lengths.")
+    ],
+    output: Output = None,
+    in_place: InPlace = False,
+    backup: Backup = False,
+    dry_run: DryRun = False,
+    loads: LoadTable = None,
+    delta_t: Annotated[
+        str | None, typer.Option("--delta-t", help='Change of temperature, as "30 K" or "-54 F".')
+    ] = None,
+    move_clamps: Annotated[
+        bool, typer.Option("--move-clamps", help="Clamp load points where they are drawn now.")
+    ] = False,
+    combo: Combos = None,
+    rev: Annotated[str, typer.Option("--rev", help="Number or letter of the revision.")] = "",
+    description: Annotated[str, typer.Option(help="Revision row: what changed.")] = "",
+    by: Annotated[str, typer.Option(help="Revision row: who drew it.")] = "",
+    date: Annotated[str, typer.Option(help="Revision row: date.")] = "",
+    fresh: Fresh = False,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    plot_scale: PlotScale = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """Say what a load change moves, and write it into the issued drawing.
+
+    Edit load texts in the issued drawing, or give a load table or a change of temperature. A
+    cable not yet cut is formed anew; one that is cut keeps its lengths and its elevations move.
+    """
+    from dxfcable.asking import AskedRevision
+    from dxfcable.commands.running import Asked, Target
+    from dxfcable.commands.solving import revise_all
+
+    asked = Asked(
+        units=units,
+        force_unit=force_unit,
+        settings=settings,
+        as_json=as_json,
+        plot_scale=plot_scale,
+        loads=loads,
+        fresh=fresh,
+        combos=tuple(combo or ()),
+    )
+    target = Target(output=output, in_place=in_place, backup=backup, dry_run=dry_run)
+    wanted = AskedRevision(
+        hold=hold,
+        delta_t=delta_t,
+        move_clamps=move_clamps,
+        rev=rev,
+        description=description,
+        by=by,
+        date=date,
+    )
+    raise typer.Exit(revise_all(drawings, asked, target, wanted))
+
+
+@app.command(
+    cls=PlainCommand,
+    epilog="Examples: dxfcable schedule solved.dxf; "
+    "dxfcable schedule *.dxf --csv schedules/ --json",
+)
+def schedule(
+    drawings: Drawings,
+    csv: Annotated[
+        Path | None, typer.Option("--csv", help="Folder for three CSV files of each drawing.")
+    ] = None,
+    combo: Combos = None,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """List cables, hangers and anchorages with their lengths and forces; the drawing stays.
+
+    Cut lengths need the deductions of the settings' page, by end fitting or by mark.
+    """
+    from dxfcable.commands.running import Asked
+    from dxfcable.commands.scheduling import schedule_all
+
+    asked = Asked(
+        units=units,
+        force_unit=force_unit,
+        settings=settings,
+        as_json=as_json,
+        combos=tuple(combo or ()),
+    )
+    raise typer.Exit(schedule_all(drawings, asked, csv))
+
+
+@app.command(
+    cls=PlainCommand,
     epilog="Examples: dxfcable picture solved.dxf -o solved.pdf; "
-    "dxfcable picture sheet.dxf -o sheet.png --layout A1"
+    "dxfcable picture sheet.dxf -o sheet.png --layout A1",
 )
 def picture(
     drawing: Annotated[Path, typer.Argument(metavar="ANY.dxf", help="The drawing to picture.")],
@@ -193,7 +324,7 @@ def picture(
     raise typer.Exit(picture_one(drawing, output, asked, layout=layout, size=size))
 
 
-@app.command(epilog="Example: dxfcable strip solved.dxf -o original.dxf")
+@app.command(cls=PlainCommand, epilog="Example: dxfcable strip solved.dxf -o original.dxf")
 def strip(
     drawings: Drawings,
     output: Output = None,
@@ -213,6 +344,11 @@ def main() -> None:
     """Run the command line; a fault of our own shows its traceback and exits 3."""
     from dxfcable.errors import DxfcableError
 
+    # One drawing is a short run whose objects live to its end or are counted away: to look for
+    # circles among them, while modules load, is a tenth of it. For several see `run_over`.
+    gc.disable()
+    # Nothing here is large enough to be shared out; threads cost time and memory at start.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     try:
         app()
     except DxfcableError as error:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import functools
 from typing import TYPE_CHECKING
 
 from dxfcable.curves import curves
@@ -41,7 +42,6 @@ def gather(
     remarks: Remarks,
     *,
     status: str = FORMED,
-    supports_rigid: bool | None = None,
 ) -> FormedCable:
     """Put one cable's result together.
 
@@ -49,8 +49,6 @@ def gather(
     ----------
     status : str
         `formed`, or `cut` where its unstressed lengths are kept.
-    supports_rigid : bool, optional
-        Whether no support moves after forming; found from the layout where it is not told.
     """
     diagram = force_diagram(shape)
     span = SpanShape(
@@ -68,7 +66,7 @@ def gather(
         under=combination.text,
         level=combination.level,
         level_is_assumed=combination.level_is_assumed,
-        supports_rigid=is_rigid(layout, cable) if supports_rigid is None else supports_rigid,
+        supports_rigid=True,
         weight=cable.weight,
         weight_case=weight_case(cable),
         ea=cable.ea,
@@ -119,9 +117,10 @@ def reactions(cable: Cable, shape: Shape) -> tuple[Reaction, ...]:
     )
 
 
-def names(shape: Shape) -> tuple[str, ...]:
+@functools.cache
+def names(count: int) -> tuple[str, ...]:
     """Name the pieces by their rays."""
-    return tuple(f"{letter}O" for letter in bow_letters(shape.lengths.size))
+    return tuple(f"{letter}O" for letter in bow_letters(count))
 
 
 def governs(cable: Cable, shape: Shape) -> Governs:
@@ -130,7 +129,7 @@ def governs(cable: Cable, shape: Shape) -> Governs:
     ends = {(0, "left"): cable.supports[0], (shape.lengths.size - 1, "right"): cable.supports[-1]}
     support = ends.get((governing, shape.governing_end))
     return Governs(
-        segment=names(shape)[governing],
+        segment=names(shape.lengths.size)[governing],
         end=shape.governing_end,
         support=support.mark if support else None,
     )
@@ -138,20 +137,30 @@ def governs(cable: Cable, shape: Shape) -> Governs:
 
 def segments(shape: Shape) -> tuple[Segment, ...]:
     """Return the pieces; without weight both ends of one are alike."""
-    points = [(float(a), float(b)) for a, b in zip(shape.x, shape.y, strict=True)]
+    points = list(zip(shape.x.tolist(), shape.y.tolist(), strict=True))
+    columns = (
+        shape.tensions_left.tolist(),
+        shape.tensions_right.tolist(),
+        shape.angles_left.tolist(),
+        shape.angles_right.tolist(),
+        shape.lengths.tolist(),
+        shape.unstressed_lengths.tolist(),
+    )
     return tuple(
         Segment(
             name=name,
-            start=points[k],
-            end=points[k + 1],
-            tension_left=float(shape.tensions_left[k]),
-            tension_right=float(shape.tensions_right[k]),
-            angle_left=float(shape.angles_left[k]),
-            angle_right=float(shape.angles_right[k]),
-            length=float(shape.lengths[k]),
-            unstressed_length=float(shape.unstressed_lengths[k]),
+            start=start,
+            end=end,
+            tension_left=left,
+            tension_right=right,
+            angle_left=first,
+            angle_right=second,
+            length=length,
+            unstressed_length=unstressed,
         )
-        for k, name in enumerate(names(shape))
+        for name, start, end, left, right, first, second, length, unstressed in zip(
+            names(shape.lengths.size), points, points[1:], *columns, strict=False
+        )
     )
 
 
@@ -191,10 +200,3 @@ def nodes(cable: Cable, shape: Shape, remarks: Remarks) -> tuple[Node, ...]:
         )
     )
     return first, *inner, last
-
-
-def is_rigid(layout: Layout, cable: Cable) -> bool:
-    """Whether no stay of this cable's supports states its stiffness."""
-    keys = {s.key for s in cable.supports}
-    stays = [s for s in layout.stays if s.support in keys]
-    return not any(s.anchor is not None and s.anchor.ea is not None for s in stays)

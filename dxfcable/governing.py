@@ -32,11 +32,17 @@ class Forming:
         Mark of the cable that the rule is for.
     under : str or None
         Combination that overrules the drawing's UNDER.
+    combos : tuple of str
+        Combinations to check, as typed.
+    cut : bool
+        Whether the cables count as cut from now on.
     """
 
     rule: Rule | None = None
     cable: str | None = None
     under: str | None = None
+    combos: tuple[str, ...] = ()
+    cut: bool = False
 
 
 def refuse_later_work(cable: Cable, remarks: Remarks) -> None:
@@ -44,8 +50,6 @@ def refuse_later_work(cable: Cable, remarks: Remarks) -> None:
     asked = []
     if len(cable.supports) > 2:
         asked.append(("later-saddles", "saddles between its ends"))
-    if cable.delta_t is not None:
-        asked.append(("later-temperature", "a change of temperature (DELTA_T)"))
     if cable.strand:
         asked.append(("later-strand", "a strand from a table (STRAND)"))
     for code, what in asked:
@@ -53,6 +57,12 @@ def refuse_later_work(cable: Cable, remarks: Remarks) -> None:
             code,
             f"cable {cable.mark} asks for {what}, which this version does not compute",
             remedy="Take it out of the drawing, or state its effect as loads or EA.",
+        )
+    if cable.delta_t and cable.alpha is None:
+        remarks.stop(
+            "no-alpha",
+            f"cable {cable.mark} has DELTA_T and no ALPHA",
+            remedy='Write ALPHA into its data block, such as "12e-6 /C".',
         )
 
 

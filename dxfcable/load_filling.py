@@ -109,7 +109,7 @@ def apply(layout: Layout, table: LoadTable) -> Layout:
     changed = replace(layout, cables=cables, force_unit=unit or None)
     said = Faults()
     _tell(spots, entries, unit, said)
-    findings = (*_still_true(layout, changed, filled), *table.findings, *said.findings)
+    findings = (*without_mended(layout, changed, filled), *table.findings, *said.findings)
     return replace(changed, findings=findings)
 
 
@@ -153,7 +153,10 @@ def _filled(load: LoadPoint, entry: Entry, unit: str) -> LoadPoint:
     """Give a point the table's values."""
     cases = merged(load, entry.values, unit)
     drawn = "" if _same(cases, load.cases) else _as_drawn(load, unit)
-    return replace(load, cases=cases, source="csv", drawn=drawn)
+    # The very number drawn, though it differs by less than shows: it tells later edits.
+    stated = load.cases if load.drawn_cases is None else load.drawn_cases
+    drawn_cases = None if cases == stated else stated
+    return replace(load, cases=cases, source="csv", drawn=drawn, drawn_cases=drawn_cases)
 
 
 def _same(first: _Cases, second: _Cases) -> bool:
@@ -203,7 +206,7 @@ def _tell(spots: Sequence[Spot], entries: Mapping[Key, Entry], unit: str, said: 
         said.note(Code.FORCE_UNITS_MIXED, text)
 
 
-def _still_true(layout: Layout, changed: Layout, filled: Mapping[Key, LoadPoint]) -> list[Finding]:
+def without_mended(layout: Layout, changed: Layout, filled: Mapping[Key, LoadPoint]) -> list[Finding]:
     """Leave out findings of the reader that the table has mended."""
     # The place too: points within one block share its handle and line.
     origins = [load.origin for load in filled.values()]

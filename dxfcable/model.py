@@ -56,6 +56,9 @@ __all__ = [
     "Movement",
     "Node",
     "Origin",
+    "PlanArea",
+    "PlanCell",
+    "PlanPoint",
     "Point",
     "PointChange",
     "PointRange",
@@ -161,7 +164,8 @@ class LoadPoint:
 
     `cases` pairs a case letter (or `load`) with its value [force], down positive, in the
     drafter's order. `value_origin` is the text or attribute that states the value.
-    `drawn` is that text where another source (CSV) overruled it, else "".
+    `drawn` is that text where another source (CSV) overruled it, else ""; `drawn_cases` is then
+    what the drawing states, None where nothing overruled it.
     """
 
     mark: str
@@ -172,6 +176,7 @@ class LoadPoint:
     clamped: bool = False
     source: str = "drawing"  # or "csv", "record"
     drawn: str = ""
+    drawn_cases: tuple[tuple[str, float], ...] | None = None
     origin: Origin = field(default_factory=Origin)
     value_origin: Origin | None = None
 
@@ -227,6 +232,8 @@ class Cable:
         Per unstressed length [force/length]; `ea` [force] or None for inextensible.
     alpha, delta_t : float or None
         Expansion [1/K] and temperature change [K].
+    fitting_left, fitting_right : str
+        End fittings by their names in the settings; "" where none is named.
     deck, clearance : tuple of Point
         Vertices from left to right; empty where none is drawn.
     """
@@ -245,6 +252,8 @@ class Cable:
     delta_t: float | None = None
     capacity: float | None = None
     strand: str = ""
+    fitting_left: str = ""
+    fitting_right: str = ""
     deck: tuple[Point, ...] = ()
     clearance: tuple[Point, ...] = ()
     frame: Rectangle | None = None
@@ -287,6 +296,53 @@ class Stay:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class PlanPoint:
+    """A hanger point of a framing plan; `cable` is the cable that it names, "" for none."""
+
+    mark: str
+    at: Point
+    cable: str = ""
+    origin: Origin = field(default_factory=Origin)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class PlanCell:
+    """What one hanger point carries of one loaded area.
+
+    `cable` is the position in `Layout.cables` of the load point with this mark, `at` the point
+    in plan. `rings` bound the cell, openings too [length]; `cases` pairs case and force.
+    """
+
+    cable: int
+    mark: str
+    at: Point
+    rings: tuple[tuple[Point, ...], ...]
+    area: float
+    cases: tuple[tuple[str, float], ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class PlanArea:
+    """A loaded area of a framing plan.
+
+    `number` counts from 1, left to right, then top to bottom. `pressures` pairs a case (or
+    `load`) with its value [force/length^2], empty where the text does not read. `direction`
+    is the line that a one-way deck spans along. `cells` and `net_area` [length^2] are known
+    once the area is shared out to its points.
+    """
+
+    number: int
+    outline: tuple[Point, ...]
+    holes: tuple[tuple[Point, ...], ...] = ()
+    pressures: tuple[tuple[str, float], ...] = ()
+    direction: tuple[Point, Point] | None = None
+    net_area: float = 0.0
+    cells: tuple[PlanCell, ...] = ()
+    origin: Origin = field(default_factory=Origin)
+    value_origin: Origin | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Layout:
     """All that was understood of one drawing.
 
@@ -300,5 +356,7 @@ class Layout:
     cables: tuple[Cable, ...] = ()
     masts: tuple[Mast, ...] = ()
     stays: tuple[Stay, ...] = ()
+    plan: tuple[PlanArea, ...] = ()
+    plan_points: tuple[PlanPoint, ...] = ()
     text_height: float | None = None
     findings: tuple[Finding, ...] = ()

@@ -38,6 +38,31 @@ def solved(drawing: str, outcome: Outcome) -> Json:
     }
 
 
+def revised(drawing: str, outcome: Outcome) -> Json:
+    """Describe a revised drawing: what a solve says, and what moved."""
+    from dxfcable.report_states import movement
+
+    result = solved(drawing, outcome)
+    assert outcome.solution is not None
+    cables = result["cables"]
+    assert isinstance(cables, list)
+    for described, change in zip(cables, outcome.solution.revised, strict=True):
+        before = change.before
+        described["held"] = change.held
+        described["before"] = {
+            "status": before.status,
+            "horizontal": before.horizontal,
+            "max_tension": before.max_tension,
+            "sag": before.sag,
+            "length": before.length,
+            "points": [_node(n) for n in before.nodes],
+            "segments": [_segment(s) for s in before.segments],
+            "reactions": [_reaction(r) for r in before.reactions],
+        }
+        described["movement"] = [movement(m) for m in change.movement]
+    return result
+
+
 def understood(drawing: str, outcome: Outcome) -> Json:
     """Describe what was read of a drawing; `error` stands beside where solve would refuse."""
     layout = outcome.layout
@@ -174,9 +199,20 @@ def _cable(
         "reactions": [_reaction(r) for r in formed.reactions],
         "force_diagrams": [_diagram(d) for d in diagrams if d.cable == number],
         "anchorages": [_anchorage(a) for a in anchorages if a.support in keys],
-        "clearance": None,
-        "states": [],
-        "envelope": None,
+        **_checked(formed),
+    }
+
+
+def _checked(formed: FormedCable) -> Json:
+    """Describe clearance, states and envelope."""
+    if not formed.states and formed.clearance is None:
+        return {"clearance": None, "states": [], "envelope": None}
+    from dxfcable import report_states as more
+
+    return {
+        "clearance": more.clearance(formed.clearance),
+        "states": [more.state(s, _node, _segment, _reaction, _anchorage) for s in formed.states],
+        "envelope": more.envelope(formed.envelope),
     }
 
 

@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
     from dxfcable.model import Finding, Point, Rule
+    from dxfcable.recorded import RecordedHead
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -160,7 +161,8 @@ class FormedCable:
 
     `horizontal` is None where spans differ; `utilization` None without a capacity. `curves`
     holds one polyline a span for a cable with weight: its nodes, and so many points between
-    them that it is true to a millimetre; empty where the nodes alone are the shape.
+    them that it is true to a millimetre; empty where the nodes alone are the shape. `delta_t` is
+    the change from the reference temperature that it stands at [K].
     """
 
     mark: str
@@ -191,6 +193,7 @@ class FormedCable:
     states: tuple[State, ...] = ()
     envelope: Envelope | None = None
     clearance: Clearance | None = None
+    delta_t: float = 0.0
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -220,8 +223,6 @@ class State:
         Of this cable's supports, all cables at them in this state.
     slack : tuple of str
         Marks of hangers whose net load is zero or up.
-    curves : tuple of tuples of Point
-        As `FormedCable.curves`.
     """
 
     combo: str
@@ -239,7 +240,6 @@ class State:
     anchorages: tuple[Anchorage, ...] = ()
     supports: tuple[SupportShift, ...] = ()
     slack: tuple[str, ...] = ()
-    curves: tuple[tuple[Point, ...], ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -390,7 +390,8 @@ class Revised:
 class Solution:
     """All cables of a drawing formed, in the order of `Layout.cables`.
 
-    `revisions` is what stands on the revision layer, `revised` what this run changed.
+    `revisions` is what stands on the revision layer, `revised` what this run changed, `heads`
+    the supports that give after forming, by key, `combos` the combinations asked for, as typed.
     """
 
     cables: tuple[FormedCable, ...]
@@ -398,3 +399,5 @@ class Solution:
     findings: tuple[Finding, ...] = ()
     revisions: tuple[CableRevisions, ...] = ()
     revised: tuple[Revised, ...] = ()
+    heads: tuple[tuple[int, RecordedHead], ...] = ()
+    combos: tuple[str, ...] = ()

@@ -5,19 +5,15 @@ A TOML text overrides what it names. The caller finds and reads the file; nothin
 
 from __future__ import annotations
 
-import math
 import tomllib
 from dataclasses import dataclass, field, fields
-from typing import TYPE_CHECKING, TypeVar
 
 from dxfcable.settings_checks import SettingsError, check, refusal
+from dxfcable.settings_cut_length import CutLength, Fitting, read_cut_length
 from dxfcable.settings_page import PAGE
+from dxfcable.settings_values import table
 
-if TYPE_CHECKING:
-    from collections.abc import Mapping
-__all__ = ["Settings", "SettingsError", "default_page", "load"]
-
-_Table = TypeVar("_Table")
+__all__ = ["Fitting", "Settings", "SettingsError", "default_page", "load"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -184,14 +180,6 @@ class Sheet:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
-class Fitting:
-    """Deductions of one end fitting [drawing units]."""
-
-    pin_to_face: float = 0.0
-    embedment: float = 0.0
-
-
-@dataclass(frozen=True, slots=True, kw_only=True)
 class Settings:
     """All settings of an office."""
 
@@ -204,14 +192,11 @@ class Settings:
     strength: Strength = field(default_factory=Strength)
     anchor: AnchorDefaults = field(default_factory=AnchorDefaults)
     sheet: Sheet = field(default_factory=Sheet)
-    cut_length: tuple[tuple[str, Fitting], ...] = ()
+    cut_length: CutLength = field(default_factory=CutLength)
 
     def fitting(self, name: str) -> Fitting | None:
         """Find an end fitting by its name, without regard to case."""
-        for known, fitting in self.cut_length:
-            if known.casefold() == name.casefold():
-                return fitting
-        return None
+        return self.cut_length.fitting(name)
 
 
 def default_page() -> str:
@@ -250,82 +235,22 @@ def load(text: str) -> Settings:
         raise SettingsError(message, remedy="Correct that line.") from error
     defaults = Settings()
     known = [f.name for f in fields(defaults)]
-    for table, content in page.items():
-        if table not in known:
-            raise refusal(table, "is no table of the settings", f"Known: {', '.join(known)}.")
+    for name, content in page.items():
+        if name not in known:
+            raise refusal(name, "is no table of the settings", f"Known: {', '.join(known)}.")
         if not isinstance(content, dict):
-            raise refusal(table, "is a table", f"Write [{table}] and its keys below.")
+            raise refusal(name, "is a table", f"Write [{name}] and its keys below.")
     settings = Settings(
-        layers=_table("layers", page, defaults.layers),
-        blocks=_table("blocks", page, defaults.blocks),
-        units=_table("units", page, defaults.units),
-        cases=_table("cases", page, defaults.cases),
-        limits=_table("limits", page, defaults.limits),
-        show=_table("show", page, defaults.show),
-        strength=_table("strength", page, defaults.strength),
-        anchor=_table("anchor", page, defaults.anchor),
-        sheet=_table("sheet", page, defaults.sheet),
-        cut_length=tuple(
-            (name, _table(name, page["cut_length"], Fitting(), "cut_length."))
-            for name in page.get("cut_length", {})
-        ),
+        layers=table("layers", page, defaults.layers),
+        blocks=table("blocks", page, defaults.blocks),
+        units=table("units", page, defaults.units),
+        cases=table("cases", page, defaults.cases),
+        limits=table("limits", page, defaults.limits),
+        show=table("show", page, defaults.show),
+        strength=table("strength", page, defaults.strength),
+        anchor=table("anchor", page, defaults.anchor),
+        sheet=table("sheet", page, defaults.sheet),
+        cut_length=read_cut_length(page.get("cut_length", {})),
     )
     check(settings)
     return settings
-
-
-def _table(name: str, page: Mapping[str, object], default: _Table, prefix: str = "") -> _Table:
-    """Override the fields of a table's defaults by what the page says, types checked."""
-    content = page.get(name, {})
-    keys = [f.name for f in fields(default)]  # type: ignore[arg-type]  # each table is a dataclass
-    if not isinstance(content, dict):
-        raise refusal(prefix + name, "is a table", f"Known keys: {', '.join(keys)}.")
-    values = {key: getattr(default, key) for key in keys}
-    for key, value in content.items():
-        where = f"{prefix}{name}.{key}"
-        if key not in keys:
-            raise refusal(where, "is no key of the settings", f"Known: {', '.join(keys)}.")
-        values[key] = _value(where, value, values[key])
-    return type(default)(**values)
-
-
-def _value(where: str, value: object, default: object) -> object:
-    """Check a value against the kind of its default and freeze it."""
-    match default:
-        case bool():
-            if isinstance(value, bool):
-                return value
-            raise refusal(where, f"is {value!r}", "Write true or false.")
-        case str():
-            if isinstance(value, str):
-                return value
-            raise refusal(where, f"is {value!r}", "Write a text in quotes.")
-        case int():
-            if isinstance(value, int) and not isinstance(value, bool):
-                return value
-            raise refusal(where, f"is {value!r}", "Write a whole number.")
-        case float():
-            return _number(where, value)
-        case (float(), float()):
-            if isinstance(value, list) and len(value) == 2:
-                return (_number(where, value[0]), _number(where, value[1]))
-            raise refusal(
-                where, f"is {value!r}", "Write two numbers in brackets, as [3.0, 1000.0]."
-            )
-        case (str(), *_):
-            if isinstance(value, list) and all(isinstance(v, str) for v in value):
-                return tuple(value)
-            raise refusal(where, f"is {value!r}", "Write texts in brackets.")
-        case _:
-            if isinstance(value, dict) and all(isinstance(v, str) for v in value.values()):
-                return tuple(value.items())
-            raise refusal(where, f"is {value!r}", 'Write { DL = "D" } and the like.')
-
-
-def _number(where: str, value: object) -> float:
-    """Take a finite number that is not negative: no setting has use for another."""
-    if isinstance(value, int | float) and not isinstance(value, bool):
-        number = float(value)
-        if math.isfinite(number) and number >= 0:
-            return number
-    raise refusal(where, f"is {value!r}", "Write a number of zero or more.")

@@ -65,12 +65,34 @@ def check(settings: Settings) -> None:
     for key in ("text_mm", "text_in"):
         if getattr(settings.show, key) == 0:
             _fail(f"show.{key}", "is 0", "Write the plotted height of texts.")
+    _check_cut_length(settings)
     if settings.show.plot_scale:
         try:
             read_plot_scale(settings.show.plot_scale)
         except QuantityError as error:
             what = f"is {settings.show.plot_scale!r}"
             _fail("show.plot_scale", what, error.remedy)
+
+
+def _check_cut_length(settings: Settings) -> None:
+    """Refuse forces that do not read in any drawing."""
+    if not settings.cut_length.marks:
+        return
+    from dxfcable.quantities import Style, parse_stiffness
+
+    style = Style(
+        length_unit="ft",
+        bare_unit=settings.units.force,
+        decimal_comma=settings.units.decimal_comma,
+    )
+    for mark, stated in settings.cut_length.marks:
+        for key in ("measuring_tension", "hanger_ea"):
+            text = getattr(stated, key)
+            try:
+                if text:
+                    parse_stiffness(text, style)
+            except QuantityError as error:
+                _fail(f"cut_length.marks.{mark}.{key}", f"is {text!r}", error.remedy)
 
 
 def _choice(key: str, value: str, choices: tuple[str, ...]) -> None:

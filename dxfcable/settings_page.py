@@ -89,4 +89,16 @@ language = "en"
 
 [cut_length]                 # end fittings (FITTING_L, FITTING_R): deductions, drawing units
 # open_socket = { pin_to_face = 0.0, embedment = 0.0 }
+# [cut_length.marks.C1]      # what holds for one cable, or "*" for all
+# measuring_tension = "60 kN"    # the tension that its length is measured under, with unit
+# pin_offset = 0.0           # support point to pin, each end, or [left, right]
+# pin_to_face = 0.0          # in place of what its fittings state, likewise
+# embedment = 0.0            # likewise
+# constructional_stretch = 0.0   # share of the length, where it is not prestretched
+# [cut_length.marks.P1]      # a hanger, as "C1/P1" where marks repeat; or a cable: all of its own
+# hanger_ea = "9000 kN"      # stiffness, with unit
+# clamp_drop = 0.0           # cable's centre line down to the upper pin
+# deck_pin = 0.0             # deck line up to the lower pin
+# hanger_top = "open_socket" # its end fittings
+# hanger_bottom = "open_socket"
 """

@@ -6,11 +6,14 @@ anything is refused.
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
-from dxfcable.anchorages import anchorages
+from dxfcable.anchorages import anchorages, loads_at_supports
+from dxfcable.built import Built
 from dxfcable.errors import LayoutError, RuleError
-from dxfcable.gathering import gather, is_rigid
+from dxfcable.gathering import gather
+from dxfcable.giving import giving_heads, recorded_heads
 from dxfcable.governing import (
     Forming,
     combination_for,
@@ -31,13 +34,20 @@ from dxfcable.model import (
     Solution,
 )
 from dxfcable.quantities import format_force
+from dxfcable.recorded import CUT, FORMED
 from dxfcable.remarks import Remarks
 from dxfcable.statics.catenary_forming import form_catenary
 from dxfcable.statics.combinations import combine
 from dxfcable.statics.forming import form
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
+    from dxfcable.anchorages import MovedHead
+    from dxfcable.built import Standing
     from dxfcable.curves import Shape
+    from dxfcable.model import Anchorage
+    from dxfcable.recorded import RecordedHead
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
 
@@ -47,32 +57,161 @@ _EXACT = 6  # digits, where a bound is shown
 _REFUSED = "the drawing cannot be solved as it is"
 
 
-def solve(layout: Layout, forming: Forming, settings: Settings) -> Solution:
-    """Form every cable and find the forces at every mast and stay.
+def solve(
+    layout: Layout,
+    forming: Forming,
+    settings: Settings,
+    standing: Mapping[str, Standing] | None = None,
+) -> Solution:
+    """Form every cable, find the forces at every mast and stay, and check the combinations.
+
+    Parameters
+    ----------
+    standing : mapping of str to Standing, optional
+        Cables already cut, by mark: they are not formed, they keep their lengths.
 
     Raises
     ------
     LayoutError
         With all findings, where one of them stops.
     """
-    notes = _unknown_cable(layout, forming)
-    formed: list[FormedCable] = []
-    combinations: list[Combination] = []
-    for cable in layout.cables:
+    work = _Work(layout, forming, settings, standing or {})
+    work.notes += _unknown_cable(layout, forming)
+    for number in range(len(layout.cables)):
+        work.form(number)
+    work.refuse_if_stopped()
+    work.stand()
+    work.refuse_if_stopped()
+    work.join()
+    work.refuse_if_stopped()
+    return work.checked()
+
+
+class _Work:
+    """One layout on its way to a solution."""
+
+    def __init__(
+        self,
+        layout: Layout,
+        forming: Forming,
+        settings: Settings,
+        standing: Mapping[str, Standing],
+    ) -> None:
+        self._layout = layout
+        self._forming = forming
+        self._settings = settings
+        self._standing = standing
+        self._cables = list(layout.cables)
+        self._formed: dict[int, FormedCable] = {}
+        self._combinations: dict[int, Combination] = {}
+        self._built: dict[int, Built] = {}
+        self._heads: tuple[tuple[int, RecordedHead], ...] = ()
+        self._moved: dict[int, MovedHead] = {}
+        self._anchorages: tuple[Anchorage, ...] = ()
+        self.notes: list[Finding] = []
+
+    def refuse_if_stopped(self) -> None:
+        """Refuse with everything found so far, if something of it stops."""
+        if any(f.severity is Severity.ERROR for f in self.notes):
+            raise LayoutError(_REFUSED, tuple(self.notes))
+
+    def form(self, number: int) -> None:
+        """Form one cable, or fit one that is cut to its record."""
+        cable = self._cables[number]
         remarks = Remarks(cable)
-        combination = combination_for(cable, forming, settings, remarks)
-        result = _form(layout, cable, combination, forming, settings, remarks)
-        notes += remarks.findings
-        if result is not None and combination is not None:
-            formed.append(result)
-            combinations.append(combination)
-    if any(f.severity is Severity.ERROR for f in notes):
-        raise LayoutError(_REFUSED, tuple(notes))
-    found, joint_findings = anchorages(layout, tuple(formed), tuple(combinations), settings)
-    notes += joint_findings
-    if any(f.severity is Severity.ERROR for f in joint_findings):
-        raise LayoutError(_REFUSED, tuple(notes))
-    return Solution(cables=tuple(formed), anchorages=found, findings=tuple(notes))
+        standing = self._standing.get(cable.mark)
+        if standing is not None:
+            from dxfcable.standing import fitted
+
+            refuse_later_work(cable, remarks)
+            self._cables[number] = fitted(cable, standing.record, remarks)
+            self.notes += remarks.findings
+            return
+        combination = combination_for(cable, self._forming, self._settings, remarks)
+        found = _form(self._layout, cable, combination, self._forming, self._settings, remarks)
+        self.notes += remarks.findings
+        if found is not None and combination is not None:
+            shape, formed = found
+            self._formed[number] = formed
+            self._combinations[number] = combination
+            self._built[number] = Built(
+                cable=cable,
+                pieces=tuple(shape.unstressed_lengths.tolist()),
+                shape=shape,
+                delta_t=cable.delta_t or 0.0,
+            )
+
+    def stand(self) -> None:
+        """Find how the cables that are cut stand."""
+        numbers = [k for k, c in enumerate(self._cables) if c.mark in self._standing]
+        if not numbers:
+            return
+        from dxfcable.standing import stand
+
+        self._heads = recorded_heads(self._layout, self._standing)
+        pairs = [(self._cables[k], self._standing[self._cables[k].mark]) for k in numbers]
+        stood, self._moved = stand(self._layout, pairs, self._heads, self._settings, self.notes)
+        for number, one in zip(numbers, stood, strict=False):
+            self._formed[number] = one.formed
+            self._combinations[number] = one.combination
+            self._built[number] = one.built
+
+    def join(self) -> None:
+        """Find the forces of masts, stays and anchors, and which heads give after forming."""
+        order = range(len(self._cables))
+        loads = loads_at_supports(self._layout, [self._combinations[k] for k in order])
+        self._anchorages, said = anchorages(
+            self._layout,
+            [self._formed[k].reactions for k in order],
+            loads,
+            self._settings,
+            heads=self._moved,
+        )
+        self.notes += said
+        if not self._layout.stays:
+            return
+        known = {key for key, _ in self._heads}
+        fresh = [a for a in self._anchorages if a.support not in known]
+        self._heads += giving_heads(self._layout, fresh, self.notes)
+        self._say_rigid({key for key, _ in self._heads})
+
+    def _say_rigid(self, giving: set[int]) -> None:
+        """Say of each cable with stays whether its supports give."""
+        for number, cable in enumerate(self._cables):
+            keys = {s.key for s in cable.supports}
+            stayed = keys & {stay.support for stay in self._layout.stays}
+            if keys & giving:
+                formed = self._formed[number]
+                self._formed[number] = replace(formed, supports_rigid=False)
+            elif stayed:
+                remarks = Remarks(cable)
+                remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid")
+                self.notes += remarks.findings
+
+    def checked(self) -> Solution:
+        """Check every combination asked for."""
+        order = range(len(self._cables))
+        formed = tuple(self._formed[k] for k in order)
+        texts = self._forming.combos
+        has_heat = any(cable.delta_t for cable in self._cables)
+        if texts or has_heat or any(cable.clearance for cable in self._cables):
+            from dxfcable.checking import check, combinations_asked
+
+            built = [self._built[k] for k in order]
+            asked, faults = combinations_asked(built, formed, texts, self._settings)
+            self.notes += faults
+            self.refuse_if_stopped()
+            found = check(self._layout, built, formed, asked, self._heads, self._settings)
+            self.notes += found.findings
+            self.refuse_if_stopped()
+            formed = found.cables
+        return Solution(
+            cables=formed,
+            anchorages=self._anchorages,
+            findings=tuple(dict.fromkeys(self.notes)),
+            heads=self._heads,
+            combos=texts,
+        )
 
 
 def _unknown_cable(layout: Layout, forming: Forming) -> list[Finding]:
@@ -97,7 +236,7 @@ def _form(
     forming: Forming,
     settings: Settings,
     remarks: Remarks,
-) -> FormedCable | None:
+) -> tuple[Shape, FormedCable] | None:
     """Form one cable, None where a finding stops it."""
     refuse_later_work(cable, remarks)
     rule = rule_for(cable, forming, remarks)
@@ -123,8 +262,10 @@ def _form(
         text = f"cable {cable.mark}: {_refusal(layout, rule, error)}"
         remarks.stop("rule", text, origin=rule.origin, raw=rule.text)
         return None
-    _remark(layout, cable, shape, settings, remarks)
-    return gather(layout, cable, rule, combination, shape, settings, remarks)
+    _remark(cable, shape, settings, remarks)
+    status = CUT if forming.cut else FORMED
+    formed = gather(layout, cable, rule, combination, shape, settings, remarks, status=status)
+    return shape, formed
 
 
 def _refusal(layout: Layout, rule: Rule, error: Exception) -> str:
@@ -141,9 +282,7 @@ def _refusal(layout: Layout, rule: Rule, error: Exception) -> str:
     )
 
 
-def _remark(
-    layout: Layout, cable: Cable, shape: Shape, settings: Settings, remarks: Remarks
-) -> None:
+def _remark(cable: Cable, shape: Shape, settings: Settings, remarks: Remarks) -> None:
     """Say what an engineer should know of this shape."""
     if shape.has_uplift:
         marks = ", ".join(cable.loads[k - 1].mark for k in shape.above_string)
@@ -158,15 +297,6 @@ def _remark(
         remarks.say(
             "sag-ratio",
             f"cable {cable.mark}: sag over span is {ratio:.4f}, outside {low:g} to {high:g}",
-        )
-    keys = {s.key for s in cable.supports}
-    if any(stay.support in keys for stay in layout.stays) and is_rigid(layout, cable):
-        remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid")
-    if any(stay.support in keys for stay in layout.stays) and not is_rigid(layout, cable):
-        remarks.say(
-            "stays-give-later",
-            f"cable {cable.mark}: the stretch of its stays acts in states after forming; the "
-            "formed state stands as drawn",
         )
     if cable.ea is None:
         remarks.say(

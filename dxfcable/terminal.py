@@ -5,38 +5,37 @@ from __future__ import annotations
 import sys
 from typing import TYPE_CHECKING
 
-from rich.console import Console
-from rich.text import Text
-
 from dxfcable.job import CAUTION
 from dxfcable.lengths import format_elevation, format_length
 from dxfcable.model import Cable, Finding, FormedCable, Layout, Rule, RuleKind, Severity
+from dxfcable.plain_output import PlainConsole, Table, is_plain, rich_console
 from dxfcable.quantities import format_force
 from dxfcable.report import sentence
+from dxfcable.terminal_states import head_words, show_changes, show_states
 from dxfcable.units import FORCE_UNITS
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from rich.table import Table
+    from rich.console import Console
 
     from dxfcable.job import Outcome
     from dxfcable.model import Anchorage
 
+    Out = Console | PlainConsole
+
 _DIGITS = 4
-_WIDTH = 110  # where the output is no terminal
 _COLORS = {Severity.ERROR: "bold red", Severity.WARNING: "yellow", Severity.NOTE: ""}
 _FORCE_RULES = (RuleKind.MAX_TENSION, RuleKind.PULL)
 
 
-def console(*, is_error: bool = False) -> Console:
+def console(*, is_error: bool = False) -> Out:
     """Return a console that prints text as it is."""
     stream = sys.stderr if is_error else sys.stdout
-    width = None if stream.isatty() else _WIDTH
-    return Console(file=stream, highlight=False, markup=False, emoji=False, width=width)
+    return PlainConsole(stream) if is_plain(stream) else rich_console(stream)
 
 
-def show_understood(out: Console, outcome: Outcome) -> None:
+def show_understood(out: Out, outcome: Outcome) -> None:
     """Print what was read: supports, loads and rule of each cable."""
     layout = outcome.layout
     assert layout is not None
@@ -46,7 +45,7 @@ def show_understood(out: Console, outcome: Outcome) -> None:
     )
     for cable in layout.cables:
         out.print()
-        out.print(Text(f"Cable {_safe(cable.mark)}", style="bold"))
+        out.print(f"Cable {_safe(cable.mark)}", style="bold")
         out.print(_drawn_table(layout, cable))
         out.print(f"rule: {rule_words(cable.rule, layout)}; under: {cable.under or 'not stated'}")
         _show_members(out, layout, cable)
@@ -54,14 +53,22 @@ def show_understood(out: Console, outcome: Outcome) -> None:
         out.print("no cable was understood")
 
 
-def show_solved(out: Console, outcome: Outcome) -> None:
+def show_revised(out: Out, outcome: Outcome) -> None:
+    """Print what a load change did to each cable, then all that `show_solved` prints."""
+    assert outcome.layout is not None
+    assert outcome.solution is not None
+    show_changes(out, outcome.solution, outcome.layout)
+    show_solved(out, outcome)
+
+
+def show_solved(out: Out, outcome: Outcome) -> None:
     """Print pull, tensions, points, reactions and anchorages of each cable."""
     layout, solution = outcome.layout, outcome.solution
     assert layout is not None
     assert solution is not None
     for formed in solution.cables:
         out.print()
-        out.print(Text(f"Cable {_safe(formed.mark)}", style="bold"))
+        out.print(_safe(f"Cable {formed.mark}{head_words(formed)}"), style="bold")
         out.print(_summary(formed, layout))
         out.print(_points_table(formed, layout))
         out.print(_segments_table(formed, layout))
@@ -69,6 +76,8 @@ def show_solved(out: Console, outcome: Outcome) -> None:
         for found in solution.anchorages:
             if found.support in keys:
                 out.print(_anchorage_words(found, layout))
+        if formed.states or formed.clearance is not None:
+            show_states(out, formed, layout)
     if outcome.layers:
         out.print()
         out.print(f"layers written: {', '.join(_safe(name) for name in outcome.layers)}")
@@ -76,12 +85,12 @@ def show_solved(out: Console, outcome: Outcome) -> None:
     out.print(CAUTION)
 
 
-def show_findings(out: Console, findings: Sequence[Finding]) -> None:
+def show_findings(out: Out, findings: Sequence[Finding]) -> None:
     """Print findings, those that stop first."""
     for severity in (Severity.ERROR, Severity.WARNING, Severity.NOTE):
         for finding in findings:
             if finding.severity is severity:
-                out.print(Text(_safe(sentence(finding)), style=_COLORS[severity]), soft_wrap=True)
+                out.print(_safe(sentence(finding)), style=_COLORS[severity], soft_wrap=True)
 
 
 def rule_words(rule: Rule | None, layout: Layout) -> str:
@@ -102,13 +111,7 @@ def rule_words(rule: Rule | None, layout: Layout) -> str:
 
 def _table(*columns: str) -> Table:
     """Make a table whose first column is text and whose others are numbers."""
-    from rich.box import SIMPLE_HEAD
-    from rich.table import Table
-
-    table = Table(box=SIMPLE_HEAD, pad_edge=False)
-    for number, column in enumerate(columns):
-        table.add_column(column, justify="left" if number == 0 else "right", no_wrap=True)
-    return table
+    return Table(columns)
 
 
 def _drawn_table(layout: Layout, cable: Cable) -> Table:
@@ -136,7 +139,7 @@ def _drawn_table(layout: Layout, cable: Cable) -> Table:
     return table
 
 
-def _show_members(out: Console, layout: Layout, cable: Cable) -> None:
+def _show_members(out: Out, layout: Layout, cable: Cable) -> None:
     """List masts and stays, deck and frame."""
     keys = {s.key: s.mark for s in cable.supports}
     for name, members in (("mast", layout.masts), ("stay", layout.stays)):

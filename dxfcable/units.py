@@ -53,6 +53,7 @@ class Doubt(enum.StrEnum):
     LENGTH_UNREAD = "length-unread"
     LENGTH_AMBIGUOUS = "length-ambiguous"
     WEIGHT_UNREAD = "weight-unread"
+    PRESSURE_UNREAD = "pressure-unread"
     TEMPERATURE_UNREAD = "temperature-unread"
     EXPANSION_UNREAD = "expansion-unread"
     PLOT_SCALE_UNREAD = "plot-scale-unread"

@@ -21,6 +21,7 @@ NAMES = (
     "pipe_crossing_r12.dxf",
     "twin_views_mm.dxf",
     "long_walkway_60.dxf",
+    "deck_plan.dxf",
 )
 # Loads, supports, closing strings, masts, stays, anchors, decks, data blocks, frames.
 COUNTS = {
@@ -29,6 +30,7 @@ COUNTS = {
     "pipe_crossing_r12.dxf": (13, 4, 2, 0, 0, 0, 0, 2, 2),
     "twin_views_mm.dxf": (11, 4, 2, 2, 2, 2, 0, 2, 2),
     "long_walkway_60.dxf": (60, 2, 0, 2, 2, 2, 1, 1, 1),
+    "deck_plan.dxf": (9, 2, 1, 2, 2, 2, 1, 1, 1),
 }
 RELEASES = {
     "canopy_roof.dxf": "AC1015",
@@ -36,6 +38,7 @@ RELEASES = {
     "pipe_crossing_r12.dxf": "AC1009",
     "twin_views_mm.dxf": "AC1032",
     "long_walkway_60.dxf": "AC1021",
+    "deck_plan.dxf": "AC1027",
 }
 # Cable, its rule, and the loads that form it, left to right; the scenario's own numbers.
 _LOADS_A = (11.5, 12.5, 12.5, 15.0, 15.0, 12.5, 12.5, 11.5)
@@ -59,6 +62,8 @@ CABLES: dict[str, tuple[tuple[str, str, tuple[float, ...]], ...]] = {
             tuple(2.6 if 29 <= k <= 32 else 2.15 if k % 10 == 0 else 1.8 for k in range(1, 61)),
         ),
     ),
+    # 1.25 kPa on 4.0 x 2.4 m a hanger; at the sixth an opening of 1.0 x 0.8 m.
+    "deck_plan.dxf": (("C1", "sag", (*[12.0] * 5, 11.0, *[12.0] * 3)),),
 }
 KINDS = ("LOAD", "SUPP", "STRG", "MAST", "STAY", "ANCH", "DECK", "DATA", "FRAM")
 

@@ -147,7 +147,7 @@ def test_a_cable_without_a_rule_gets_the_table_of_sags() -> None:
 @pytest.mark.parametrize(
     ("changes", "code"),
     [
-        ({"delta_t": 20.0}, "later-temperature"),
+        ({"delta_t": 20.0}, "no-alpha"),
         ({"strand": "1/2"}, "later-strand"),
         (
             {

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import json
 import sys
 import traceback
@@ -37,6 +38,9 @@ class Asked:
     under: str | None = None
     loads: Path | None = None
     fresh: bool = False
+    combos: tuple[str, ...] = ()
+    cut: bool = False
+    reform: bool = False
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -76,6 +80,9 @@ def options(drawing: Path, asked: Asked) -> Options:
         under=asked.under,
         loads=read_table(asked.loads) if asked.loads else None,
         fresh=asked.fresh,
+        combos=asked.combos,
+        cut=asked.cut,
+        reform=asked.reform,
     )
 
 
@@ -83,6 +90,8 @@ def run_over(drawings: Sequence[Path], asked: Asked, work: Callable[[Path], Done
     """Work on all drawings, each whatever became of the others; return the worst code."""
     documents: list[Json] = []
     worst = 0
+    if len(drawings) > 1:
+        gc.enable()  # what one drawing leaves is not kept through all others
     for drawing in _progress(drawings, asked):
         if len(drawings) > 1 and not asked.as_json:
             sys.stdout.write(f"\n{drawing}\n")
@@ -209,6 +218,6 @@ def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:
         return
     from rich.progress import track
 
-    from dxfcable import terminal
+    from dxfcable.plain_output import rich_console
 
-    yield from track(drawings, "drawings", console=terminal.console(is_error=True))
+    yield from track(drawings, "drawings", console=rich_console(sys.stderr))

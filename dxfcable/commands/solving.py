@@ -1,4 +1,4 @@
-"""`solve` and `strip`: our layers written into drawings, and taken out again."""
+"""`solve`, `revise` and `strip`: our layers written into drawings, and taken out again."""
 
 from __future__ import annotations
 
@@ -18,16 +18,19 @@ from dxfcable.commands.running import (
 )
 from dxfcable.errors import DxfcableError
 from dxfcable.files import read_drawing
-from dxfcable.job import solve_pieces, strip_bytes
+from dxfcable.job import revise_pieces, solve_pieces, strip_bytes
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
     from pathlib import Path
 
+    from dxfcable.asking import AskedRevision
+
 
 def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
     """Solve each drawing and write it."""
     _check_rules(asked)
+    _check_cut(asked)
     check_target(target)
     check_names(drawings, target)
 
@@ -47,6 +50,34 @@ def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
             terminal.console().print(said)
 
         document = report.solved(drawing.name, outcome)
+        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
+
+    return run_over(drawings, asked, work)
+
+
+def revise_all(
+    drawings: Sequence[Path], asked: Asked, target: Target, revision: AskedRevision
+) -> int:
+    """Answer a load change in each issued drawing and write it."""
+    check_target(target)
+    check_names(drawings, target)
+
+    def work(drawing: Path) -> Done:
+        output = result_path(drawing, drawings, target)
+        data = read_drawing(drawing)
+        pieces, outcome = revise_pieces(data, options(drawing, asked), revision)
+        said = (
+            write_result(drawing, output, pieces, target) if output else "dry run: nothing written"
+        )
+
+        def show() -> None:
+            from dxfcable import terminal
+
+            terminal.show_revised(terminal.console(), outcome)
+            terminal.show_findings(terminal.console(), outcome.findings)
+            terminal.console().print(said)
+
+        document = report.revised(drawing.name, outcome)
         return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return run_over(drawings, asked, work)
@@ -75,6 +106,14 @@ def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
         return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return run_over(drawings, asked, work)
+
+
+def _check_cut(asked: Asked) -> None:
+    """Refuse to cut a cable and to discard it at once."""
+    if asked.cut and asked.reform:
+        message = "--cut keeps the cable that is formed now, --reform discards one that was cut"
+        remedy = "Give --reform first, and --cut when the new cable is ordered."
+        raise DxfcableError(message, code="usage", remedy=remedy)
 
 
 def _check_rules(asked: Asked) -> None:

@@ -95,12 +95,27 @@ class Code(enum.StrEnum):
     POLYLINE_BACK = "polyline-back"
     POLYLINE_TWO = "polyline-two"
     DIMENSION_DIFFERS = "dimension-differs"
-    LATER_AREA = "later-area"
-    LATER_PLAN = "later-plan"
+    AREA_SHAPE = "area-shape"
+    AREA_MERGED = "area-merged"
+    AREA_TEXT_MISSING = "area-text-missing"
+    AREA_TEXT_STRAY = "area-text-stray"
+    AREA_TEXTS_TWO = "area-texts-two"
+    AREA_DIRECTION = "area-direction"
+    AREA_OVERLAP = "area-overlap"
+    AREA_UNSHARED = "area-unshared"
+    PLAN_INCOMPLETE = "plan-incomplete"
+    PLAN_MERGED = "plan-merged"
+    PLAN_MARK_MISSING = "plan-mark-missing"
+    PLAN_MARK_UNKNOWN = "plan-mark-unknown"
+    PLAN_MARK_AMBIGUOUS = "plan-mark-ambiguous"
+    PLAN_MARK_REPEATED = "plan-mark-repeated"
+    PLAN_LINES_NEAR = "plan-lines-near"
+    PLAN_POINT_FREE = "plan-point-free"
+    PLAN_SPACING = "plan-spacing"
+    PLAN_SHARED = "plan-shared"
     LATER_HOLD_DOWN = "later-hold-down"
     LATER_STRAND = "later-strand"
     LATER_SPAN = "later-span"
-    LATER_FITTING = "later-fitting"
 
 
 MEANINGS: dict[str, str] = {
@@ -189,12 +204,27 @@ MEANINGS: dict[str, str] = {
     Code.POLYLINE_BACK: "a deck or clearance line runs back in x",
     Code.POLYLINE_TWO: "two deck or clearance lines over the same x",
     Code.DIMENSION_DIFFERS: "a dimension's text differs from what is drawn",
-    Code.LATER_AREA: "loaded areas are not yet read in this version",
-    Code.LATER_PLAN: "framing plans are not yet read in this version",
+    Code.AREA_SHAPE: "a loaded area or opening that is not closed, or crosses itself",
+    Code.AREA_MERGED: "outlines of areas drawn twice were merged",
+    Code.AREA_TEXT_MISSING: "a loaded area without a pressure",
+    Code.AREA_TEXT_STRAY: "a pressure that stands in no loaded area, or in several",
+    Code.AREA_TEXTS_TWO: "two pressures in one loaded area",
+    Code.AREA_DIRECTION: "a direction of a deck in no area, or two in one",
+    Code.AREA_OVERLAP: "loaded areas that overlap: there their loads add",
+    Code.AREA_UNSHARED: "a loaded area that cannot be shared out to hanger points",
+    Code.PLAN_INCOMPLETE: "areas without hanger points, or points without areas",
+    Code.PLAN_MERGED: "hanger points drawn twice were merged",
+    Code.PLAN_MARK_MISSING: "a hanger point of the plan without a mark",
+    Code.PLAN_MARK_UNKNOWN: "a hanger point that no load point matches",
+    Code.PLAN_MARK_AMBIGUOUS: "a hanger point that several load points match",
+    Code.PLAN_MARK_REPEATED: "two hanger points for one load point",
+    Code.PLAN_LINES_NEAR: "supporting lines so near that they may be one",
+    Code.PLAN_POINT_FREE: "a hanger point that carries nothing of any area",
+    Code.PLAN_SPACING: "hanger points spaced otherwise in plan than in elevation",
+    Code.PLAN_SHARED: "what the points of a loaded area carry, and their sum",
     Code.LATER_HOLD_DOWN: "hold-down cables are not yet read in this version",
     Code.LATER_STRAND: "the strand of a stay or mast is not yet read in this version",
     Code.LATER_SPAN: "SPAN is not yet used in this version",
-    Code.LATER_FITTING: "end fittings are not yet used in this version",
     Doubt.NUMBER_UNREAD: "a number that does not read",
     Doubt.NUMBER_AMBIGUOUS: "a comma, point or fraction that may mean two things",
     Doubt.LOAD_UNREAD: "a load text that is more or less than a force",
@@ -212,6 +242,7 @@ MEANINGS: dict[str, str] = {
     Doubt.LENGTH_UNREAD: "a length that does not read",
     Doubt.LENGTH_AMBIGUOUS: "a length that may mean two things",
     Doubt.WEIGHT_UNREAD: "a weight by length that does not read",
+    Doubt.PRESSURE_UNREAD: "a load by area that does not read",
     Doubt.TEMPERATURE_UNREAD: "a temperature difference that does not read",
     Doubt.EXPANSION_UNREAD: "a coefficient of expansion that does not read",
     Doubt.PLOT_SCALE_UNREAD: "a plotting scale that does not read",

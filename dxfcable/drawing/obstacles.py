@@ -111,7 +111,8 @@ class _Batch:
 
     def texts(self) -> NDArray[np.int64]:
         """Return the records of texts, attributes of inserts among them."""
-        records = np.unique(self.record[np.isin(self.head, self.heads)])
+        records = self.record[np.isin(self.head, self.heads)]  # ascending, as tags are
+        records = records[np.diff(records, prepend=-1) > 0]
         return records[np.isin(self.kinds[records], _TEXTS)]
 
 

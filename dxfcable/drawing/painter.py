@@ -15,6 +15,7 @@ import numpy as np
 from dxfcable.drawing.items import Painting, PlacedDiagram
 from dxfcable.drawing.painting.arrows import plan_arrows
 from dxfcable.drawing.painting.block_places import BlockPlaces
+from dxfcable.drawing.painting.clearance_view import draw_clearance
 from dxfcable.drawing.painting.diagram_block import BETWEEN, BlockMaker, arranged
 from dxfcable.drawing.painting.drawn_ground import DrawnGround
 from dxfcable.drawing.painting.elevation_labels import clear_above, elevation_labels
@@ -27,7 +28,11 @@ from dxfcable.drawing.painting.elevation_view import (
 from dxfcable.drawing.painting.free_place import grown
 from dxfcable.drawing.painting.label_ground import LabelGround
 from dxfcable.drawing.painting.label_placing import Group, put_labels
+from dxfcable.drawing.painting.plan_view import PlanView
 from dxfcable.drawing.painting.plotting import plan_plotting
+from dxfcable.drawing.painting.revision_table import draw_revisions
+from dxfcable.drawing.painting.revision_tags import draw_tags
+from dxfcable.drawing.painting.revision_view import draw_old_profile, revision_labels
 from dxfcable.drawing.painting.schedule_text import arrangements, draw_schedule
 from dxfcable.drawing.painting.sketch import Sketch
 from dxfcable.drawing.painting.views import join_views, rounder_of
@@ -104,19 +109,31 @@ def paint(
     )
     views = join_views(layout, solution, settings, plotting.text_height)
     painter.paint_elevations(views)
+    plan = PlanView(
+        layout=layout,
+        views=views,
+        obstacles=obstacles,
+        held_places=held_places,
+        held_texts=held_texts,
+    )
+    plan.paint_cells()
+    painter.places.add_items(plan.items)
     for index, view in enumerate(views):
         shapes = arrangements(view, settings.show.reference_temperature, held_texts)
         painter.places.prepare(view.prefix, [(shape.width, shape.height) for shape in shapes])
         painter.paint_diagram(index, view)
         painter.paint_schedule(view, shapes)
-    _check_ids(painter.items)
+        painter.paint_revisions(view)
+    plan.paint_list((*painter.items, *plan.items))
+    items = (*painter.items, *plan.items)
+    _check_ids(items)
     return Painting(
-        items=tuple(painter.items),
+        items=items,
         diagrams=tuple(painter.diagrams),
-        origins=tuple(painter.origins),
+        origins=(*painter.origins, *plan.origins),
         text_height=plotting.text_height,
         plot_scale=plotting.scale,
-        findings=(plotting.finding, *painter.findings),
+        findings=(plotting.finding, *painter.findings, *plan.findings),
     )
 
 
@@ -169,13 +186,16 @@ class _Painter:
             drawn = DrawnGround(self.obstacles, region, _COLUMN * view.height)
             arrows = plan_arrows(view, drawn)
             draw_elevation(view, sketch, arrows)
+            draw_old_profile(view, sketch)
             level = draw_span_dimensions(view, sketch, drawn, clear_above(view, arrows))
+            clearance = draw_clearance(view, sketch, drawn)
             ground.add(sketch.items)
-            labels = tuple(elevation_labels(view, level, arrows))
+            labels = (*clearance, *elevation_labels(view, level, arrows), *revision_labels(view))
             groups.append(Group(labels=labels, sketch=sketch, drawn=drawn))
         put_labels(groups, ground, self.held_places)
         for view, group in zip(views, groups, strict=True):
             sketch = group.sketch
+            self.origins += draw_tags(view, sketch)
             self.items += sketch.items
             self.places.add_view(view.prefix, sketch.bounds(), view.cable.frame, sketch.items)
 
@@ -250,6 +270,24 @@ class _Painter:
             origin, held = rounder.point((x, y + shapes[chosen].height)), where
         self._add_part(view, name, sketch, origin, rounder)
         self._note("schedule-placed", view, f"the schedule stands {held}", origin)
+
+    def paint_revisions(self, view: View) -> None:
+        """Paint the rows of revision below the schedule, or where it is free."""
+        if view.revisions is None:
+            return
+        rounder = rounder_of(view.cable)
+        name = f"{view.prefix}/revisions"
+        sketch = draw_revisions(view, view.revisions, rounder, self.held_texts)
+        x0, y0, x1, y1 = sketch.bounds()
+        size = (x1 - x0, y1 - y0)
+        origin, where = self._held(name, rounder)
+        if origin is None:
+            _, corner, where = self.places.find(
+                view.prefix, [size], [self.places.below(view.prefix, size)]
+            )
+            origin = rounder.point((corner[0] - x0, corner[1] - y0))
+        self._add_part(view, name, sketch, origin, rounder)
+        self._note("revisions-placed", view, f"the revisions stand {where}", origin)
 
     def _held(self, name: str, rounder: Rounder) -> tuple[Point | None, str]:
         """Give the origin that a drafter gave a part, None if he did not."""

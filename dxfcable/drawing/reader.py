@@ -18,6 +18,7 @@ from dxfcable.drawing.reading.lines import read_frames, read_lines
 from dxfcable.drawing.reading.loadowners import share_out
 from dxfcable.drawing.reading.loadpoints import read_load_points
 from dxfcable.drawing.reading.loadtexts import read_load_texts
+from dxfcable.drawing.reading.plan import Plan
 from dxfcable.drawing.reading.strings import read_strings
 from dxfcable.drawing.reading.supports import merging_tolerance, number_marks, read_supports
 from dxfcable.drawing.reading.survey import (
@@ -122,6 +123,7 @@ def _understand(context: Context, version: str, options: ReadOptions) -> Layout:
     number_marks(drafts, "P")
     carried = share_out(context, supports, cables, drafts)
     anchorages = Anchorages(context, supports, tolerance)
+    plan = Plan(context, tolerance)
     decks = read_lines(context, cables, "deck")
     clearances = read_lines(context, cables, "clearance")
     frames = read_frames(context, cables)
@@ -129,7 +131,8 @@ def _understand(context: Context, version: str, options: ReadOptions) -> Layout:
     for cable in cables:
         cable.datum = read_datum(context, supports, cable)
     points = tuple(support_of(key, draft, cables) for key, draft in enumerate(supports))
-    unit = forces.unit or context.style.bare_unit or None
+    unit = forces.unit or context.style.bare_unit or plan.force_unit or None
+    areas = plan.areas(unit or "")
     return Layout(
         version=version,
         length_unit=context.unit,
@@ -150,7 +153,9 @@ def _understand(context: Context, version: str, options: ReadOptions) -> Layout:
         ),
         masts=anchorages.masts(unit or ""),
         stays=anchorages.stays(unit or ""),
-        text_height=text_height,
+        plan=areas,
+        plan_points=plan.points,
+        text_height=text_height or plan.text_height,
         findings=tuple(context.faults.findings),
     )
 

@@ -3,6 +3,7 @@
 Text lines `key,value,...` joined by `;`, names escaped as `=XX`, in strings of under 250
 bytes on entities of ours. Each string begins `record=`; the first of a part says which part
 it is and how the whole sums up. It is written twice for each cable, and either copy will do.
+The lines of a cable are those of `cable_record.py`.
 """
 
 from __future__ import annotations
@@ -17,7 +18,7 @@ from dxfcable.errors import DrawingError
 if TYPE_CHECKING:
     from collections.abc import Iterable, Mapping, Sequence
 
-    from dxfcable.model import Cable, FormedCable, Layout, Point
+    from dxfcable.model import Point
 
 FORMAT = 1
 _PREFIX = "record="
@@ -96,28 +97,6 @@ def facts_text(facts: FileFacts) -> str:
     ]
     lines += [("text", escape(k), escape(v)) for k, v in sorted(facts.memory.texts.items())]
     lines += [("origin", escape(k), repr(x), repr(y)) for k, (x, y) in facts.origins]
-    return ";".join(",".join(line) for line in lines)
-
-
-def cable_text(layout: Layout, cable: Cable, formed: FormedCable) -> str:
-    """Return the lines of one cable: its inputs as used, status and unstressed lengths."""
-    rule = formed.rule
-    lines: list[tuple[str, ...]] = [
-        ("units", layout.length_unit, layout.force_unit or ""),
-        ("cable", escape(cable.mark), formed.status),
-        ("rule", rule.kind.value, repr(rule.value), *(repr(v) for v in rule.point or ())),
-        ("under", escape(formed.under)),
-        ("weight", repr(cable.weight), escape(cable.weight_case or "")),
-        ("ea", "" if cable.ea is None else repr(cable.ea)),
-        ("datum", "" if cable.datum is None else repr(cable.datum)),
-    ]
-    lines += [
-        ("support", escape(s.mark), repr(s.x), repr(s.y), s.kind.value) for s in cable.supports
-    ]
-    for load in cable.loads:
-        cases = [part for case, value in load.cases for part in (escape(case), repr(value))]
-        lines.append(("load", escape(load.mark), repr(load.x), repr(load.y), load.source, *cases))
-    lines += [("piece", repr(s.unstressed_length)) for s in formed.segments]
     return ";".join(",".join(line) for line in lines)
 
 

@@ -13,6 +13,7 @@ from dxfcable.drawing.bytes.cut import encoding_of
 from dxfcable.drawing.bytes.decode import layer_key, plain
 from dxfcable.drawing.bytes.pairs import find_tags, plain_pairs, skip_prologue
 from dxfcable.drawing.bytes.splice import Change
+from dxfcable.drawing.cable_reading import sort_cables
 from dxfcable.drawing.marks import Marked, sort_marked
 from dxfcable.drawing.record import FileFacts, Memory
 from dxfcable.drawing.rows import LENT_ROW, LOOK_CODES, ROW
@@ -23,6 +24,7 @@ if TYPE_CHECKING:
     from collections.abc import Iterable, Mapping
 
     from dxfcable.drawing.bytes.scan import Scan
+    from dxfcable.recorded import CableRecord
 
 _MOVED = 0.01  # of a label's height
 _MOST = 0.6  # share of a part that must have moved alike
@@ -46,6 +48,9 @@ class Stripping:
         Records of ENTITIES that are ours.
     layer_looks : mapping of str to (str, ...)
         Colour, flags and weight of each layer row that goes, by the key of its name.
+    cables : tuple of CableRecord
+        What the record says of each cable, in the order of the file; those that do not read
+        are told in `findings`.
     removed : int
         How many entities of ours there are.
     """
@@ -55,6 +60,7 @@ class Stripping:
     pointed_at: Mapping[tuple[str, int], str]
     own_heads: frozenset[int]
     layer_looks: Mapping[str, tuple[str, ...]]
+    cables: tuple[CableRecord, ...]
     removed: int
     findings: tuple[Finding, ...]
 
@@ -70,7 +76,8 @@ def plan_strip(drawing: Scan) -> Stripping:
     found = sort_marked(drawing)
     records = record.join(m.record_lines for m in (*found.ours, *found.copies))
     facts = record.read_facts(records)
-    findings = [_copy_note(drawing, m) for m in found.copies]
+    cables, unread_notes = _cables(found.ours, records)
+    findings = [*(_copy_note(drawing, m) for m in found.copies), *unread_notes]
     if found.ours and not records:
         findings.append(
             Finding(
@@ -101,6 +108,7 @@ def plan_strip(drawing: Scan) -> Stripping:
         pointed_at=pointed_at,
         own_heads=frozenset(m.record for m in found.ours),
         layer_looks=_layer_looks(drawing, facts.opened),
+        cables=cables,
         removed=len(found.ours),
         findings=(*findings, *row_findings, *memory_findings, *pointer_findings),
     )
@@ -121,6 +129,25 @@ def _records_of(drawing: Scan, ours: Iterable[Marked]) -> frozenset[int]:
     return frozenset(
         k for m in ours for k in range(m.record, int(np.searchsorted(drawing.starts, m.span[1])))
     )
+
+
+def _cables(
+    ours: Iterable[Marked], records: list[str]
+) -> tuple[tuple[CableRecord, ...], list[Finding]]:
+    """Read what is kept of each cable; what a drafter's copies carry counts last."""
+    carried = record.join(m.record_lines for m in ours)
+    read, unread = sort_cables([*carried, *(text for text in records if text not in carried)])
+    notes = [
+        Finding(
+            code="record-unread",
+            severity=Severity.NOTE,
+            text=f"cable {cable.mark}: its record {cable.reason}",
+            remedy="Solve the drawing again before it is revised or verified.",
+            cable=cable.mark,
+        )
+        for cable in unread
+    ]
+    return read, notes
 
 
 def _copy_note(drawing: Scan, copy: Marked) -> Finding:

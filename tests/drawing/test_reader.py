@@ -381,8 +381,6 @@ def test_arcs_and_splines_as_cable_are_not_supported_and_said_so() -> None:
 @pytest.mark.parametrize(
     ("layer", "code"),
     [
-        ("S-CABL-AREA", "later-area"),
-        ("S-CABL-PLAN", "later-plan"),
         ("S-CABL-HOLD", "later-hold-down"),
     ],
 )

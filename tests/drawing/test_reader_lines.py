@@ -105,7 +105,8 @@ def test_all_else_of_a_data_block_is_read_in_the_layouts_units() -> None:
     assert (cable.weight_case, cable.ea, cable.capacity) == ("D", 32400.0, 150.0)
     assert (cable.strand, cable.delta_t) == ("1 in A586", 30.0)
     assert cable.alpha == pytest.approx(11.7e-6, rel=1e-12)
-    assert codes(layout) == ["later-span", "later-fitting", "force-units-mixed", "no-datum"]
+    assert (cable.fitting_left, cable.fitting_right) == ("open_socket", "")
+    assert codes(layout) == ["later-span", "force-units-mixed", "no-datum"]
 
 
 @pytest.mark.parametrize(

@@ -68,6 +68,10 @@ class BlockPlaces:
         if frame is not None:
             self._frames[prefix] = (frame.x0, frame.y0, frame.x1, frame.y1)
 
+    def add_items(self, items: Sequence[Item]) -> None:
+        """Take the room of what belongs to no cable, before any cable's ground is prepared."""
+        self._items += items
+
     def add_block(self, prefix: str, bounds: Bounds, items: Sequence[Item]) -> None:
         """Take the room of a block of a cable."""
         self.blocks[prefix].append(bounds)
@@ -85,6 +89,11 @@ class BlockPlaces:
         # A cell more, since cells that the last block only reaches into count as taken.
         cell = self._grounds[prefix].grid.cell
         return right + self._margin + cell, top - size[1]
+
+    def below(self, prefix: str, size: tuple[float, float]) -> Point:
+        """Give the corner of a block below a cable's last one, left sides level."""
+        left, bottom, _, _ = (self.blocks[prefix] or [self.bounds[prefix]])[-1]
+        return left, bottom - self._margin - self._grounds[prefix].grid.cell - size[1]
 
     def find(
         self, prefix: str, sizes: Sequence[tuple[float, float]], wanted: Sequence[Point]

@@ -19,7 +19,15 @@ if TYPE_CHECKING:
     from dxfcable.drawing.painting.drawn_ground import DrawnGround
     from dxfcable.drawing.painting.sketch import Bounds, Sketch
     from dxfcable.drawing.painting.wording import Wording
-    from dxfcable.model import Anchorage, Cable, FormedCable, Node, Point, Reaction
+    from dxfcable.model import (
+        Anchorage,
+        Cable,
+        CableRevisions,
+        FormedCable,
+        Node,
+        Point,
+        Reaction,
+    )
 
 _LEVELS, _LEVEL_STEP = 14, 0.9  # places for the span dimension above and below, text heights
 _SPOILT, _CROSSED = 40.0, 0.6
@@ -44,6 +52,8 @@ class View:
         Text height [length].
     node_names : tuple of str
         Part of ids of each node.
+    revisions : CableRevisions or None
+        What the revision layer shows.
     """
 
     prefix: str
@@ -53,6 +63,7 @@ class View:
     wording: Wording
     height: float
     node_names: tuple[str, ...]
+    revisions: CableRevisions | None = None
 
     @property
     def is_dense(self) -> bool:

@@ -40,7 +40,9 @@ class Label:
     `rotation`, `align` and `valign` follow from the object alone, never from the place taken,
     so that a label keeps its look where a drafter moves it. `target` is the object named, a
     line or twice the same point: a leader runs to it from a label that stands off by more than
-    `leader_from` text heights; None where no leader is wanted.
+    `leader_from` text heights; None where no leader is wanted. `room` is for what is drawn
+    about the text and goes with it: how far that reaches beyond the text's box, before, below,
+    behind and above it [length].
     """
 
     id: str
@@ -53,6 +55,7 @@ class Label:
     is_optional: bool = False
     target: tuple[Point, Point] | None = None
     leader_from: float = 1.25
+    room: tuple[float, float, float, float] = (0.0, 0.0, 0.0, 0.0)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -100,6 +103,11 @@ class LabelGround:
         self.strokes = np.concatenate((self.strokes, turned_boxes.of_lines(strokes(items))))
         texts = [item for item in items if isinstance(item, TextItem)]
         self.labels = np.concatenate((self.labels, turned_boxes.of_texts(texts)))
+
+    def add_rooms(self, pairs: Iterable[tuple[Label, TextItem]]) -> None:
+        """Take the room about texts that stand as their labels."""
+        rows = [turned_boxes.of_rooms(label, item) for label, item in pairs if any(label.room)]
+        self.labels = np.concatenate((self.labels, *rows))
 
     def candidates(
         self,

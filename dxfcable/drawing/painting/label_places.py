@@ -20,6 +20,8 @@ _RISES = (0.95, 1.5, 2.1, 2.7, 3.3)
 _SLIDES = (0.0, -0.25, 0.25, -0.48, 0.48)
 _GAPS = (0.45, 0.9, 1.6, 2.3)
 _TOO_FAR = 1e9
+_CORNERS = (0.35, 0.8, 1.4, 2.0, 2.5)
+_TALL = 0.6  # half the height of a text with its room, in text heights
 _ASIDE_RISES = (0.0, 0.7, 1.4, 2.1, 2.8)
 _STEPS = (0.0, 0.7, 1.4, 2.1, 2.5)
 _SHIFTS = (0.0, -0.35, 0.35, -0.7, 0.7, -1.05, 1.05, -1.4, 1.4, -1.75, 1.75, -2.1, 2.1)
@@ -121,13 +123,41 @@ def about_point(
     )
 
 
+def about_block(at: Point, size: tuple[float, float], height: float) -> tuple[Point, ...]:
+    """List middles of a block about a point, within three heights: near ones and above first.
+
+    Parameters
+    ----------
+    at : Point
+        The point.
+    size : tuple of float
+        Width and height of the block [length].
+    height : float
+        Text height [length].
+
+    Returns
+    -------
+    tuple of Point
+    """
+    return tuple(
+        (at[0] + across * height, at[1] + rise * height)
+        for across, rise in _about(0.5 * size[0] / height, 0.5 * size[1] / height, _CORNERS)
+    )
+
+
 @lru_cache(maxsize=256)
-def _about(half: float) -> tuple[Point, ...]:
-    """List offsets from a point for a text of some half width, all in heights."""
-    over = [(2.0 * share * half, rise) for rise in _RISES for share in _SLIDES]
+def _about(half: float, tall: float = _TALL, corners: tuple[float, ...] = ()) -> tuple[Point, ...]:
+    """List offsets from a point for a text of some half width and height, all in heights.
+
+    `corners` are gaps aside and above of places that lie both beside the point and above it.
+    """
+    more = tall - _TALL
+    over = [(2.0 * share * half, rise + more) for rise in _RISES for share in _SLIDES]
     aside = [(half + gap, rise) for gap in _GAPS for rise in _ASIDE_RISES]
+    over += [(2.0 * share * half, tall + rise) for rise in corners for share in _SLIDES]
+    aside += [(half + gap, tall + rise) for gap in corners for rise in corners]
     places = [
-        (round(_cost(across, turn * rise, half), 6), across, turn * rise)
+        (round(_cost(across, turn * rise, half, tall), 6), across, turn * rise)
         for across, rise in (*over, *aside, *((-across, rise) for across, rise in aside))
         for turn in (1, -1)
     ]
@@ -135,9 +165,9 @@ def _about(half: float) -> tuple[Point, ...]:
     return tuple((across, rise) for cost, across, rise in places if cost < _TOO_FAR)
 
 
-def _cost(across: float, rise: float, half: float) -> float:
+def _cost(across: float, rise: float, half: float, tall: float) -> float:
     """Weigh a place about a point: near, over it, on the first side, without a leader."""
-    off = math.hypot(max(abs(across) - half, 0.0), max(abs(rise) - 0.6, 0.0))
+    off = math.hypot(max(abs(across) - half, 0.0), max(abs(rise) - tall, 0.0))
     if off > _MOST_OFF:
         return _TOO_FAR
     is_beside = abs(across) > half

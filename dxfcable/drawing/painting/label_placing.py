@@ -79,6 +79,8 @@ def put_labels(
     }
     ground.add(placed.values())
     written |= placed
+    labels = [label for group in groups for label in group.labels]
+    ground.add_rooms((label, written[label.id]) for label in labels if label.id in written)
     for group in groups:
         # In the labels' own order, so that a label held where it stands has the same leader.
         pairs = [(label, written[label.id]) for label in group.labels if label.id in written]

@@ -8,6 +8,7 @@ from dxfcable.drawing.items import Align
 from dxfcable.drawing.painting.naming import unique_parts
 from dxfcable.drawing.painting.text_table import Table
 from dxfcable.model import RuleKind
+from dxfcable.recorded import CUT
 
 if TYPE_CHECKING:
     from dxfcable.drawing.painting.elevation_view import View
@@ -40,10 +41,21 @@ def rule_words(view: View) -> str:
             return f"THROUGH X {wording.length(rule.point[0] - first.x)}, {level}"
 
 
+def level_words(level: str, *, is_assumed: bool) -> str:
+    """Say a level, and whether it is assumed."""
+    return f"{level.upper()}{' (ASSUMED)' if is_assumed else ''}"
+
+
+def cut_words(view: View) -> str:
+    """Say in a table's head that a cable already cut runs as inextensible; "" for any other."""
+    is_rigid = view.formed.status == CUT and not view.formed.ea
+    return "CUT, INEXTENSIBLE" if is_rigid else ""
+
+
 def summary_table(view: View, temperature: str) -> Table:
     """Pair what governs and what follows with its words."""
     formed, wording = view.formed, view.wording
-    level = f"{formed.level.upper()}{' (ASSUMED)' if formed.level_is_assumed else ''}"
+    level = level_words(formed.level, is_assumed=formed.level_is_assumed)
     at = f" AT {formed.governs.support}" if formed.governs.support else f" {formed.governs.end}"
     weight = "WEIGHTLESS"
     if formed.weight:
@@ -81,6 +93,8 @@ def summary_table(view: View, temperature: str) -> Table:
         rows.append(("capacity", "CAPACITY", f"{wording.load(formed.capacity)}{used}"))
     if temperature:
         rows.append(("temperature", "REFERENCE TEMPERATURE", temperature))
+    if formed.delta_t:
+        rows.append(("delta-t", "DELTA_T", f"{formed.delta_t:+.6g} K FROM REFERENCE"))
     rows += _support_loads(view)
     for name, anchorage in view.anchorages:
         rows += _anchorage_rows(view, name, anchorage)
@@ -89,6 +103,7 @@ def summary_table(view: View, temperature: str) -> Table:
         head=("", ""),
         aligns=(Align.LEFT, Align.LEFT),
         rows=tuple((key, (name, value)) for key, name, value in rows),
+        title=cut_words(view),
     )
 
 
@@ -163,6 +178,7 @@ def point_table(view: View) -> Table:
         head=("POINT", "X", "LEVEL" if wording.has_datum else "FROM LEFT", "LOAD", "HANGER"),
         aligns=(Align.LEFT, *(Align.RIGHT,) * 4),
         rows=tuple(rows),
+        title=cut_words(view),
     )
 
 
@@ -185,4 +201,5 @@ def segment_table(view: View) -> Table:
         head=("PIECE", "T LEFT", "T RIGHT", "SLOPE", "LENGTH", "UNSTRESSED"),
         aligns=(Align.LEFT, *(Align.RIGHT,) * 5),
         rows=tuple(rows),
+        title=cut_words(view),
     )

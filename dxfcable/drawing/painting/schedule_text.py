@@ -1,4 +1,4 @@
-"""The schedule of one cable: how its tables stand, their title, frame and caution."""
+"""The schedule of one cable: how its tables stand, their titles, frames and cautions."""
 
 from __future__ import annotations
 
@@ -8,7 +8,8 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.painting.labels import text_width
 from dxfcable.drawing.painting.schedule_tables import point_table, segment_table, summary_table
-from dxfcable.drawing.painting.sketch import Sketch
+from dxfcable.drawing.painting.sketch import Sketch, shown
+from dxfcable.drawing.painting.state_tables import state_tables, states_title
 from dxfcable.drawing.painting.text_table import ROW, Table, draw_table, table_size
 
 if TYPE_CHECKING:
@@ -16,6 +17,7 @@ if TYPE_CHECKING:
 
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.rounding import Rounder
+    from dxfcable.model import Point
 
 CAUTION = (
     "Preliminary calculation aid. Results depend on the loads and geometry drawn. "
@@ -31,14 +33,29 @@ _Columns = tuple[tuple[tuple[str, Table], ...], ...]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
-class Arrangement:
-    """How the tables of a schedule stand: columns from left to right, each from the top down.
+class Box:
+    """Tables in one frame with title and caution.
 
-    Each table goes with its part of ids; `width` and `height` are those of the schedule with
-    title, caution and frame [length].
+    `name` is the first part of ids; each table goes with its own part. Columns stand from left
+    to right, each from the top down; `width` and `height` are those of the frame [length].
     """
 
+    name: str
+    title: str
     columns: _Columns
+    width: float
+    height: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Arrangement:
+    """How the boxes of a schedule stand: each with its upper left corner, the first at (0, 0).
+
+    The first box is the cable as it stands, a second one holds its checked states. `width` and
+    `height` are those of the whole [length].
+    """
+
+    boxes: tuple[tuple[Box, Point], ...]
     width: float
     height: float
 
@@ -59,28 +76,92 @@ def arrangements(view: View, temperature: str, held_texts: Mapping[str, str]) ->
     -------
     list of Arrangement
     """
-    h, name = view.height, f"{view.prefix}/schedule"
-    sizes: dict[tuple[str, str, int], tuple[float, float]] = {}
+    measure = _Measure(view.height, held_texts)
+    name, title = f"{view.prefix}/schedule", f"CABLE {view.formed.mark}"
+    own = [measure.box(name, title, columns) for columns in _shapes(view, temperature)]
+    if not view.formed.states:
+        return [_together((box, (0.0, 0.0))) for box in own]
+    # Ids of their own: what the drawing shows is held against the first box alone.
+    name, title = f"{view.prefix}/states", states_title(view)
+    states = [measure.box(name, title, columns) for columns in _state_shapes(view)]
+    found = [_stacked(box, _most_alike(box, states)) for box in own]
+    return [*found, *(_beside(box, _as_tall(box, states)) for box in own[:2])]
 
-    def size(key: str, table: Table) -> tuple[float, float]:
-        known = (key, table.part, len(table.rows))
-        if known not in sizes:
-            sizes[known] = table_size(f"{name}/{key}", table, h, held_texts)
-        return sizes[known]
 
-    found = []
-    for columns in _shapes(view, temperature):
-        measured = [[size(key, table) for key, table in column] for column in columns]
+def _most_alike(box: Box, others: list[Box]) -> Box:
+    """Choose the box that fills the width of another one best."""
+    return min(others, key=lambda other: max(box.width, other.width) * (box.height + other.height))
+
+
+def _as_tall(box: Box, others: list[Box]) -> Box:
+    """Choose the box that fills the height of another one best."""
+    return min(others, key=lambda other: max(box.height, other.height) * (box.width + other.width))
+
+
+def _stacked(upper: Box, lower: Box) -> Arrangement:
+    """Put one box below the other, both of one width."""
+    width = max(upper.width, lower.width)
+    upper, lower = replace(upper, width=width), replace(lower, width=width)
+    return _together((upper, (0.0, 0.0)), (lower, (0.0, -upper.height)))
+
+
+def _beside(left: Box, right: Box) -> Arrangement:
+    """Put one box right of the other, both of one height."""
+    height = max(left.height, right.height)
+    left, right = replace(left, height=height), replace(right, height=height)
+    return _together((left, (0.0, 0.0)), (right, (left.width, 0.0)))
+
+
+def _together(*boxes: tuple[Box, Point]) -> Arrangement:
+    return Arrangement(
+        boxes=boxes,
+        width=max(x + box.width for box, (x, _) in boxes),
+        height=max(box.height - y for box, (_, y) in boxes),
+    )
+
+
+class _Measure:
+    """Measures boxes; a table is measured once, however many boxes it stands in."""
+
+    def __init__(self, height: float, held_texts: Mapping[str, str]) -> None:
+        self.height, self.held_texts = height, held_texts
+        self._known: dict[tuple[str, str, int], tuple[float, float]] = {}
+
+    def box(self, name: str, title: str, columns: _Columns) -> Box:
+        """Frame columns of tables."""
+        h = self.height
+        measured = [[self._size(f"{name}/{key}", table) for key, table in c] for c in columns]
         width = sum(max(wide for wide, _ in column) for column in measured)
         width += _BETWEEN * h * (len(measured) - 1)
         height = max(
             sum(high for _, high in column) + _UNDER * h * (len(column) - 1) for column in measured
         )
         lines = broken(CAUTION, width, h)
-        width = max(width, *(text_width(line, h) for line in lines)) + 2.0 * h
+        shown_title = shown(self.held_texts.get(f"{name}/title", title))
+        width = max(width, *(text_width(line, h) for line in (*lines, shown_title))) + 2.0 * h
         height += (4.0 + ROW * len(lines)) * h
-        found.append(Arrangement(columns=columns, width=width, height=height))
-    return found
+        return Box(name=name, title=title, columns=columns, width=width, height=height)
+
+    def _size(self, name: str, table: Table) -> tuple[float, float]:
+        known = (name, table.part, len(table.rows))
+        if known not in self._known:
+            self._known[known] = table_size(name, table, self.height, self.held_texts)
+        return self._known[known]
+
+
+def _state_shapes(view: View) -> list[_Columns]:
+    """Give the ways in which the tables of states may stand."""
+    tables = state_tables(view)
+    forces = [pair for pair in tables if pair[0] in ("state", "member")]
+    extremes = [pair for pair in tables if pair not in forces]
+    return [
+        (tuple(forces), *((pair,) for pair in extremes)),
+        (tuple(forces), tuple(extremes)),
+        (tuple(tables),),
+        (*((pair,) for pair in forces), tuple(extremes)),
+        ((*forces, *extremes[:1]), *((pair,) for pair in extremes[1:])),
+        tuple((pair,) for pair in tables),
+    ]
 
 
 def _shapes(view: View, temperature: str) -> list[_Columns]:
@@ -116,7 +197,7 @@ def _split(key: str, table: Table, lots: int) -> list[tuple[str, Table]]:
 def draw_schedule(
     view: View, arrangement: Arrangement, rounder: Rounder, held_texts: Mapping[str, str]
 ) -> Sketch:
-    """Draw the schedule about its upper left corner as origin.
+    """Draw the schedule about its upper left corner as origin; all of it is one part.
 
     Parameters
     ----------
@@ -133,26 +214,28 @@ def draw_schedule(
     -------
     Sketch
     """
-    h, name = view.height, f"{view.prefix}/schedule"
-    sketch = Sketch(rounder, held_texts, name)
-    margin = h
-    top = -margin - 1.5 * h
-    sketch.text(f"{name}/title", _LAYER, f"CABLE {view.formed.mark}", (margin, top), h)
-    x, bottom = margin, top
-    for column in arrangement.columns:
+    sketch = Sketch(rounder, held_texts, f"{view.prefix}/schedule")
+    for box, corner in arrangement.boxes:
+        _draw_box(sketch, box, corner, view.height)
+    return sketch
+
+
+def _draw_box(sketch: Sketch, box: Box, corner: Point, h: float) -> None:
+    """Draw title, tables, caution and frame of a box from its upper left corner on."""
+    left, top = corner[0] + h, corner[1] - 2.5 * h
+    sketch.text(f"{box.name}/title", _LAYER, box.title, (left, top), h)
+    x, bottom = left, top
+    for column in box.columns:
         right, y = x, top - 0.5 * h
         for key, table in column:
-            edge, low = draw_table(sketch, f"{name}/{key}", table, (x, y), h)
+            edge, low = draw_table(sketch, f"{box.name}/{key}", table, (x, y), h)
             right, y, bottom = max(right, edge), low - _UNDER * h, min(bottom, low)
         x = right + _BETWEEN * h
-    right = x - _BETWEEN * h
-    for number, line in enumerate(broken(CAUTION, right - margin, h), start=1):
+    for number, line in enumerate(broken(CAUTION, x - _BETWEEN * h - left, h), start=1):
         bottom -= ROW * h
-        sketch.text(f"{name}/caution/{number}", _LAYER, line, (margin, bottom), h)
-        right = max(right, margin + text_width(line, h))
-    box = (0.0, bottom - margin, right + margin, 0.0)
-    sketch.rectangle(f"{name}/frame", _LAYER, box)
-    return sketch
+        sketch.text(f"{box.name}/caution/{number}", _LAYER, line, (left, bottom), h)
+    frame = (corner[0], corner[1] - box.height, corner[0] + box.width, corner[1])
+    sketch.rectangle(f"{box.name}/frame", _LAYER, frame)
 
 
 def broken(text: str, width: float, height: float) -> list[str]:

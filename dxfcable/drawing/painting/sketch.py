@@ -64,11 +64,14 @@ class Sketch:
             )
             self.items.append(item)
 
-    def polyline(self, name: str, layer: str, points: Iterable[Point]) -> None:
-        """Add an open polyline."""
+    def polyline(
+        self, name: str, layer: str, points: Iterable[Point], *, is_closed: bool = False
+    ) -> None:
+        """Add a polyline."""
         vertices = tuple(self.rounder.point(p) for p in points)
+        part = self.part or name
         self.items.append(
-            PolylineItem(id=name, layer=layer, part=self.part or name, points=vertices)
+            PolylineItem(id=name, layer=layer, part=part, points=vertices, is_closed=is_closed)
         )
 
     def rectangle(self, name: str, layer: str, bounds: Bounds) -> None:

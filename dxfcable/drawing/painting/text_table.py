@@ -15,7 +15,6 @@ if TYPE_CHECKING:
     from dxfcable.drawing.painting.sketch import Sketch
     from dxfcable.model import Point
 
-_LAYER = "table"
 ROW = 1.8  # from row to row, in text heights
 _GUTTER = 1.5  # between columns
 _HEAD, _FOOT = 0.3, 0.5  # more below the head, below the last row
@@ -26,7 +25,8 @@ class Table:
     """Rows of a table; `rows` pairs the part of ids with its cells.
 
     `columns` names the columns for the ids, `head` for the reader ("" all: no head). `part`
-    sets the ids of head and rule apart where one table is drawn as several.
+    sets the ids of head and rule apart where one table is drawn as several. `title` is a line
+    above the head, "" for none.
     """
 
     columns: tuple[str, ...]
@@ -34,6 +34,7 @@ class Table:
     aligns: tuple[Align, ...]
     rows: tuple[tuple[str, tuple[str, ...]], ...]
     part: str = ""
+    title: str = ""
 
 
 def _lines(table: Table) -> list[tuple[str, tuple[str, ...]]]:
@@ -51,6 +52,11 @@ def _widths(name: str, table: Table, height: float, held_texts: Mapping[str, str
             for key, cells in _lines(table)
         ]
         widths.append(max((text_width(text, height) for text in texts), default=0.0))
+    if table.title:
+        # The last column gives way to a title that is wider than all of them.
+        title = shown(held_texts.get(f"{name}/title{table.part}", table.title))
+        taken = sum(widths) + _GUTTER * height * (len(widths) - 1)
+        widths[-1] += max(0.0, text_width(title, height) - taken)
     return widths
 
 
@@ -59,12 +65,19 @@ def table_size(
 ) -> tuple[float, float]:
     """Give width and height of a table as `draw_table` draws it [length]."""
     widths = _widths(name, table, height, held_texts)
-    rise = ROW * len(_lines(table)) + _FOOT + (_HEAD if any(table.head) else 0.0)
+    rise = ROW * (len(_lines(table)) + bool(table.title)) + _FOOT
+    rise += _HEAD if any(table.head) else 0.0
     return sum(widths) + _GUTTER * height * (len(widths) - 1), rise * height
 
 
 def draw_table(
-    sketch: Sketch, name: str, table: Table, top_left: Point, height: float
+    sketch: Sketch,
+    name: str,
+    table: Table,
+    top_left: Point,
+    height: float,
+    *,
+    layer: str = "table",
 ) -> tuple[float, float]:
     """Draw a table from its upper left corner on.
 
@@ -80,6 +93,8 @@ def draw_table(
         Corner [length].
     height : float
         Text height [length].
+    layer : str
+        Role of the layer.
 
     Returns
     -------
@@ -92,6 +107,9 @@ def draw_table(
         edges.append(edges[-1] + width + _GUTTER * height)
     right = edges[-1] - _GUTTER * height
     y = top_left[1]
+    if table.title:
+        y -= ROW * height
+        sketch.text(f"{name}/title{table.part}", layer, table.title, (top_left[0], y), height)
     for key, cells in lines:
         y -= ROW * height
         for index, (column, text) in enumerate(zip(table.columns, cells, strict=True)):
@@ -101,9 +119,9 @@ def draw_table(
                 if align is Align.RIGHT:
                     x = edges[index + 1] - _GUTTER * height
                 cell = f"{name}/{key}/{column}"
-                sketch.text(cell, _LAYER, text, (x, y), height, align=align)
+                sketch.text(cell, layer, text, (x, y), height, align=align)
         if key == f"head{table.part}":
             rule = y - 0.5 * height
-            sketch.line(f"{name}/rule{table.part}", _LAYER, (top_left[0], rule), (right, rule))
+            sketch.line(f"{name}/rule{table.part}", layer, (top_left[0], rule), (right, rule))
             y -= _HEAD * height
     return right, y - _FOOT * height

@@ -59,8 +59,28 @@ def of_texts(items: Sequence[TextItem]) -> Floats:
 
 def of_places(label: Label, wording: str, height: float) -> Floats:
     """Give the rows of a label at each of its places, (places, 6)."""
+    before, below, behind, above = label.room
     box = np.array([text_box(wording, height, label.align, label.valign)])
+    box += (-before, -below, behind, above)
     return _turned(box, np.array(label.places), np.radians(np.array([label.rotation])))
+
+
+def of_rooms(label: Label, item: TextItem) -> Floats:
+    """Give the rows of what is drawn about a label's text: before, below, behind and above it."""
+    x0, y0, x1, y1 = text_box(item.text, item.height, item.align, item.valign)
+    before, below, behind, above = label.room
+    low, high = y0 - below, y1 + above
+    boxes = np.array(
+        [
+            (x0 - before, low, x0, high),
+            (x0, low, x1, y0),
+            (x1, low, x1 + behind, high),
+            (x0, y1, x1, high),
+        ]
+    )
+    boxes = boxes[np.array(label.room) > 0.0]
+    turns = np.radians(np.full(len(boxes), item.rotation))
+    return _turned(boxes, np.array([item.at] * len(boxes)), turns)
 
 
 def _turned(boxes: Floats, at: Floats, turns: Floats) -> Floats:

@@ -30,6 +30,8 @@ def join_views(
             if any(support.key == anchorage.support for support in cable.supports)
         )
         owned.setdefault(owner, []).append(anchorage)
+    # A cable without rows has no revisions to show.
+    revisions = {found.cable: found for found in solution.revisions if found.rows}
     prefixes = unique_parts([cable.mark for cable in layout.cables], "C")
     views = []
     for index, (cable, formed) in enumerate(zip(layout.cables, solution.cables, strict=True)):
@@ -51,6 +53,7 @@ def join_views(
                 wording=wording,
                 height=height,
                 node_names=unique_parts([node.mark for node in formed.nodes], "N"),
+                revisions=revisions.get(cable.mark),
             )
         )
     return tuple(views)

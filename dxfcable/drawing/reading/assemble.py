@@ -123,6 +123,8 @@ def cable_of(
         delta_t=draft.delta_t,
         capacity=_into(draft.capacity, force_unit),
         strand=draft.strand,
+        fitting_left=draft.fitting_left,
+        fitting_right=draft.fitting_right,
         deck=deck,
         clearance=clearance,
         frame=frame,

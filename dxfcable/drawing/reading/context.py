@@ -72,6 +72,8 @@ class CableDraft:
     delta_t: float | None = None
     capacity: Force | None = None
     strand: str = ""
+    fitting_left: str = ""
+    fitting_right: str = ""
     datum: float | None = None
 
     @property

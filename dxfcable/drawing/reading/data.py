@@ -77,9 +77,7 @@ def _read_block(context: Context, piece: Piece, cable: CableDraft) -> None:
     if tags.text("SPAN"):
         text = "SPAN is not used in this version"
         context.faults.note(Code.LATER_SPAN, text, origin=piece.origin)
-    if [tag for tag in ("FITTING_L", "FITTING_R") if tags.text(tag)]:
-        text = "end fittings are not used in this version"
-        context.faults.note(Code.LATER_FITTING, text, origin=piece.origin)
+    cable.fitting_left, cable.fitting_right = tags.text("FITTING_L"), tags.text("FITTING_R")
     tags.finish()
 
 

@@ -38,11 +38,11 @@ _READ: dict[str, tuple[Kind, ...]] = {
     "anchor": (Kind.BLOCK,),
     "deck": _LINES,
     "clearance": _LINES,
+    "area": (*_LINES, Kind.CIRCLE, Kind.TEXT),
+    "plan_point": (*_POINTS, Kind.TEXT),
     "frame": _LINES,
 }
 _LATER = {
-    "area": (Code.LATER_AREA, "loaded areas are"),
-    "plan_point": (Code.LATER_PLAN, "hanger points of a framing plan are"),
     "hold_down": (Code.LATER_HOLD_DOWN, "hold-down cables are"),
 }
 _TURNED = 1e-6
