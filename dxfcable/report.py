@@ -33,6 +33,7 @@ def solved(drawing: str, outcome: Outcome) -> Json:
         "length_unit": layout.length_unit,
         "force_unit": layout.force_unit,
         "cables": cables,
+        **_plan(layout),
         "layers": list(outcome.layers),
         "findings": findings(outcome.findings),
     }
@@ -74,6 +75,7 @@ def understood(drawing: str, outcome: Outcome) -> Json:
         "length_unit": layout.length_unit or None,
         "force_unit": layout.force_unit,
         "cables": [_drawn_cable(layout, k) for k in range(len(layout.cables))],
+        **_plan(layout),
         "findings": findings(outcome.findings),
     }
     stopping = [f for f in outcome.findings if f.severity is Severity.ERROR]
@@ -214,6 +216,16 @@ def _checked(formed: FormedCable) -> Json:
         "states": [more.state(s, _node, _segment, _reaction, _anchorage) for s in formed.states],
         "envelope": more.envelope(formed.envelope),
     }
+
+
+def _plan(layout: Layout) -> Json:
+    """Describe the loaded areas of a framing plan, where one is drawn."""
+    if not layout.plan:
+        return {}
+    from dxfcable.report_states import plan_area
+
+    marks = [cable.mark for cable in layout.cables]
+    return {"plan": [plan_area(area, marks) for area in layout.plan]}
 
 
 def _rule(rule: Rule) -> Json:

@@ -1,4 +1,4 @@
-"""States, envelope, clearance and movement as JSON: keys are public."""
+"""States, envelope, clearance, movement and plan areas as JSON: keys are public."""
 
 from __future__ import annotations
 
@@ -6,7 +6,7 @@ import math
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
-    from collections.abc import Callable
+    from collections.abc import Callable, Sequence
 
     from dxfcable.model import (
         Anchorage,
@@ -15,6 +15,7 @@ if TYPE_CHECKING:
         Extreme,
         Movement,
         Node,
+        PlanArea,
         Reaction,
         Segment,
         State,
@@ -96,6 +97,24 @@ def movement(found: Movement) -> Json:
         "tension_after": found.tension_after,
         "lean_deg": found.lean_deg,
         "hanger_change": found.hanger_change,
+    }
+
+
+def plan_area(found: PlanArea, marks: Sequence[str]) -> Json:
+    """Describe a loaded area and what each load point takes of it; `marks` are the cables'."""
+    return {
+        "area": found.number,
+        "net_area": found.net_area,
+        "pressures": dict(found.pressures),
+        "cells": [
+            {
+                "cable": marks[cell.cable],
+                "mark": cell.mark,
+                "area": cell.area,
+                "cases": dict(cell.cases),
+            }
+            for cell in found.cells
+        ],
     }
 
 

@@ -55,7 +55,7 @@ def issue(
     drawing : Scan
         The drafter's file.
     cable_records : sequence of str
-        The record of each cable, by `record.cable_text`.
+        The record of each cable, by `cable_record.cable_text`.
     memory : Memory
         What the drafter did to entities of an earlier solve.
     opened_before : tuple of str

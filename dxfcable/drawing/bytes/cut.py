@@ -186,7 +186,7 @@ def _kept(drawing: Scan, record: int, key: str, line: _Lines) -> Kept:
 def _with_key(drawing: Scan, record: int, key: str) -> bytes:
     """Copy an entity, its own handle replaced, comments left out."""
     _, end = drawing.entity_span(record)
-    last = int(np.searchsorted(drawing.starts, end))
+    last = int(np.searchsorted(drawing.starts, drawing.starts.dtype.type(end)))
     result = []
     for k in range(record, last):
         for pair in drawing.whole(k, "an entity on a cable layer"):

@@ -12,6 +12,8 @@ from typing import TYPE_CHECKING, NamedTuple, TypeAlias
 
 import numpy as np
 
+from dxfcable.drawing.bytes.growing import Growing
+
 if TYPE_CHECKING:
     from collections.abc import Iterable, Iterator
 
@@ -290,21 +292,18 @@ def _eof(
 
 
 class _Parts:
-    """Tags block by block, joined column by column so that only one is ever held twice."""
+    """Tags block by block."""
 
     def __init__(self, kind: type[np.signedinteger]) -> None:
-        self._kinds: tuple[type[np.signedinteger], ...] = (np.int16, kind, kind, kind)
-        self._columns: tuple[list[Offsets], ...] = ([], [], [], [])
+        kinds: tuple[type[np.signedinteger], ...] = (np.int16, kind, kind, kind)
+        self._columns = [Growing(one) for one in kinds]
 
     def add(self, *found: NDArray[np.int64]) -> None:
         """Add codes, starts, values and ends of one block."""
-        for column, part, kind in zip(self._columns, found, self._kinds, strict=True):
-            column.append(part.astype(kind))
+        for column, part in zip(self._columns, found, strict=True):
+            column.add(part)
 
     def joined(self, stop: int, fault: int | None) -> Tags:
         """Return all tags."""
-        whole = []
-        for column, kind in zip(self._columns, self._kinds, strict=True):
-            whole.append(np.concatenate(column) if column else np.empty(0, kind))
-            column.clear()
-        return Tags(whole[0], whole[1], whole[2], whole[3], stop, fault)
+        codes, starts, values, ends = (column.taken() for column in self._columns)
+        return Tags(codes, starts, values, ends, stop, fault)

@@ -18,13 +18,14 @@ if TYPE_CHECKING:
 
     from numpy.typing import NDArray
 
-    from dxfcable.drawing.bytes.pairs import Pair
+    from dxfcable.drawing.bytes.pairs import Offsets, Pair
 
 BINARY_SENTINEL = b"AutoCAD Binary DXF"
 HANDLE_LIMIT = 1 << 64
 FOLLOWERS = (b"VERTEX", b"ATTRIB", b"SEQEND")
 _CODES = (0, 2, 5, 8, 67, 105, 1001)
 _KEPT = (2, 8, 67, 1001)
+_AT_ONCE = 1 << 14
 # A code 0 that can be told without counting lines: after a value always comes an integer.
 _RECORD = re.compile(
     rb"^[ \t]*[+-]?0+[ \t]*\r?\n(?![ \t]*[+-]?\d+[ \t]*\r?$)(?=[ \t]*[A-Za-z0-9_])", re.MULTILINE
@@ -70,7 +71,7 @@ class Scan:
     """
 
     data: bytes
-    starts: NDArray[np.int64]
+    starts: Offsets
     kinds: NDArray[np.bytes_]
     tags: Tags
     record_of: NDArray[np.int32]
@@ -120,7 +121,9 @@ class Scan:
         """Return the first value of a code in a record, blanks taken off."""
         if code not in _KEPT:
             return self._plain_tag(record, code)
-        low, high = np.searchsorted(self.record_of, (record, record + 1))
+        # Asked for in the array's own type, or all of it would be converted each time.
+        asked = np.array((record, record + 1), self.record_of.dtype)
+        low, high = np.searchsorted(self.record_of, asked)
         for k in range(low, high):
             if self.tags.codes[k] == code:
                 return self.data[self.tags.values[k] : self.tags.ends[k]]
@@ -136,8 +139,9 @@ class Scan:
     def first_tags(self, code: int) -> tuple[NDArray[np.int64], NDArray[np.int64]]:
         """Return records that hold a code, and the index of their first such tag."""
         which = np.flatnonzero(self.tags.codes == code)
-        records, first = np.unique(self.record_of[which].astype(np.int64), return_index=True)
-        return records, which[first]
+        records = self.record_of[which]  # ascending, as tags are
+        is_first = np.diff(records, prepend=records.dtype.type(-2)) > 0
+        return records[is_first].astype(np.int64), which[is_first]
 
     @cached_property
     def heads(self) -> NDArray[np.int64]:
@@ -145,8 +149,9 @@ class Scan:
         entities = self.section("ENTITIES")
         if entities is None:
             return np.empty(0, np.int64)
-        inside = np.arange(entities.first + 1, entities.last)
-        return inside[~np.isin(self.kinds[inside], FOLLOWERS)]
+        first = entities.first + 1
+        is_head = ~np.isin(self.kinds[first : entities.last], FOLLOWERS)
+        return np.flatnonzero(is_head) + first
 
     def is_head(self, record: int) -> bool:
         """Tell whether a record begins an entity of ENTITIES."""
@@ -238,8 +243,9 @@ def scan(data: bytes) -> Scan:
             remedy="Save it as DXF.",
         )
     kinds = names(data, tags, zeros)
-    starts = np.append(tags.starts[zeros], tags.stop)
-    record_of = np.searchsorted(starts[:-1], tags.starts, side="right").astype(np.int32) - 1
+    starts = np.append(tags.starts[zeros], tags.starts.dtype.type(tags.stop))
+    record_of = np.cumsum(tags.codes == 0, dtype=np.int32)
+    record_of -= 1
     sections = _sections(_Draft(data, starts, kinds, tags, record_of))
     handles, has_handles = read_handles(data, tags, record_of, sections)
     kept = np.flatnonzero(np.isin(tags.codes, _KEPT))
@@ -261,7 +267,7 @@ class _Draft:
     """Records before their sections are known."""
 
     data: bytes
-    starts: NDArray[np.int64]
+    starts: Offsets
     kinds: NDArray[np.bytes_]
     tags: Tags
     record_of: NDArray[np.int32]
@@ -272,7 +278,8 @@ class _Draft:
 
     def name(self, record: int) -> str:
         """Return the first value of code 2 in a record."""
-        low, high = np.searchsorted(self.record_of, (record, record + 1))
+        asked = np.array((record, record + 1), self.record_of.dtype)
+        low, high = np.searchsorted(self.record_of, asked)
         which = [k for k in range(low, high) if self.tags.codes[k] == 2]
         return (
             self.data[self.tags.values[which[0]] : self.tags.ends[which[0]]].decode("latin-1")
@@ -321,7 +328,7 @@ def _refuse_other_formats(data: bytes) -> None:
     if data[:2] in (b"\xff\xfe", b"\xfe\xff"):
         msg = "line 1: this file is UTF-16"
         raise DrawingError(msg, code="utf-16", line=1, remedy=remedy)
-    if not data.strip():
+    if not data or data.isspace():
         msg = "line 1: the file is empty"
         raise DrawingError(msg, code="not-dxf", line=1, remedy=remedy)
     head = data[: 1 << 16]
@@ -338,26 +345,25 @@ def _refuse_other_formats(data: bytes) -> None:
 def _sections(draft: _Draft) -> tuple[Block, ...]:
     """Pair SECTION with ENDSEC and check what must stand once."""
     kinds = draft.kinds
-    upper = np.char.upper(kinds)
-    marks = np.flatnonzero(np.isin(upper, (b"SECTION", b"ENDSEC", b"EOF")))
+    marks = _marks(kinds)
     found: list[Block] = []
     opened: int | None = None
     for k in marks:
         at = int(draft.starts[k])
-        kind = bytes(upper[k])
+        kind = bytes(kinds[k]).upper()
         if kind != bytes(kinds[k]):
             _fault(draft, at, f"{bytes(kinds[k]).decode()} is in lower case", "lower-case")
         if kind == b"SECTION":
             if opened is not None:
                 _fault(draft, at, "a section begins before the last one has ended", "structure")
-            opened = int(k)
+            opened = k
         elif kind == b"ENDSEC":
             if opened is None:
                 _fault(draft, at, "ENDSEC without a section", "structure")
                 continue
-            found.append(Block(_section_name(draft, opened), opened, int(k)))
+            found.append(Block(_section_name(draft, opened), opened, k))
             opened = None
-    if opened is not None or not marks.size or bytes(upper[marks[-1]]) != b"EOF":
+    if opened is not None or not marks or bytes(kinds[marks[-1]]).upper() != b"EOF":
         at = max(int(draft.starts[-1]) - 1, 0)
         text = "a section has no ENDSEC" if opened is not None else "there is no EOF"
         _fault(draft, at, f"the file is cut off: {text}", "cut-off")
@@ -365,6 +371,15 @@ def _sections(draft: _Draft) -> tuple[Block, ...]:
         second = [s for s in found if s.name == "ENTITIES"][1]
         _fault(draft, int(draft.starts[second.first]), "a second ENTITIES section", "structure")
     return tuple(found)
+
+
+def _marks(kinds: NDArray[np.bytes_]) -> list[int]:
+    """Return the records that part the file, in whatever case they are written."""
+    found: list[int] = []
+    for k in range(0, kinds.size, _AT_ONCE):  # so that no second copy of all types is made
+        is_mark = np.isin(np.char.upper(kinds[k : k + _AT_ONCE]), (b"SECTION", b"ENDSEC", b"EOF"))
+        found += (np.flatnonzero(is_mark) + k).tolist()
+    return found
 
 
 def _section_name(draft: _Draft, record: int) -> str:
