@@ -304,6 +304,52 @@ def schedule(
 
 @app.command(
     cls=PlainCommand,
+    epilog="Examples: dxfcable sheets solved.dxf -d sheets; "
+    "dxfcable sheets *.dxf -d sheets --size ARCH-D --together --checker",
+)
+def sheets(
+    drawings: Drawings,
+    folder: Annotated[Path, typer.Option("-d", "--directory", help="Folder for the sheets.")],
+    together: Annotated[
+        bool, typer.Option("--together", help="Several cables on a sheet where they fit.")
+    ] = False,
+    checker: Annotated[
+        bool, typer.Option("--checker", help="Add a checker's page for each cable.")
+    ] = False,
+    size: Annotated[
+        str | None, typer.Option("--size", help="A0 to A4, ANSI-A to -E, ARCH-A to -E1.")
+    ] = None,
+    loads: LoadTable = None,
+    combo: Combos = None,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    plot_scale: PlotScale = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """Make force-diagram sheets of each cable as DXF, PDF and SVG, and an index of the set.
+
+    Elevation, force diagram, schedules, notes and title block at true paper size. Drawings
+    stay as they are; one that is not solved is solved on the way.
+    """
+    from dxfcable.commands.running import Asked
+    from dxfcable.commands.sheeting import SheetsAsked, sheets_all
+
+    asked = Asked(
+        units=units,
+        force_unit=force_unit,
+        settings=settings,
+        as_json=as_json,
+        plot_scale=plot_scale,
+        loads=loads,
+        combos=tuple(combo or ()),
+    )
+    wanted = SheetsAsked(folder=folder, together=together, checker=checker, size=size)
+    raise typer.Exit(sheets_all(drawings, asked, wanted))
+
+
+@app.command(
+    cls=PlainCommand,
     epilog="Examples: dxfcable picture solved.dxf -o solved.pdf; "
     "dxfcable picture sheet.dxf -o sheet.png --layout A1",
 )

@@ -7,7 +7,7 @@ what the format asks: order of tags, owner, marks, sizes, handles. A fault here 
 from __future__ import annotations
 
 import math
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, NoReturn
 
 from dxfcable.drawing.bytes.pairs import plain_pairs
 from dxfcable.drawing.dialect import APPID
@@ -112,8 +112,13 @@ def _records(raw: bytes) -> Iterator[list[Pair]]:
 def _need(holds: bool, kind: str, text: str) -> None:
     """Raise where something does not hold."""
     if not holds:
-        message = f"{kind} {text}"
-        raise NotConformingError(message)
+        _fail(kind, text)
+
+
+def _fail(kind: str, text: str) -> NoReturn:
+    """Raise, naming what is wrong."""
+    message = f"{kind} {text}"
+    raise NotConformingError(message)
 
 
 def _check_ascii(tags: list[Pair], dialect: Dialect, layers: set[str] | None) -> None:
@@ -124,11 +129,14 @@ def _check_ascii(tags: list[Pair], dialect: Dialect, layers: set[str] | None) ->
             name = pair.value.decode(dialect.encoding, "surrogateescape")
             _need(name in layers, kind, f"is on layer {name}, which is not ours")
             continue
-        text = pair.value.decode("ascii")
-        _need(text.isprintable(), kind, f"has an unprintable value at {pair.code}")
-        _need(text != "None", kind, f"says None at {pair.code}")
-        if 10 <= pair.code < 60 or 1010 <= pair.code < 1060:
-            _need(math.isfinite(float(text)), kind, f"has {text} at {pair.code}")
+        code, text = pair.code, pair.value.decode("ascii")
+        # Words are made only where something is wrong: this runs for every tag.
+        if not text.isprintable():
+            _fail(kind, f"has an unprintable value at {code}")
+        if text == "None":
+            _fail(kind, f"says None at {code}")
+        if (10 <= code < 60 or 1010 <= code < 1060) and not math.isfinite(float(text)):
+            _fail(kind, f"has {text} at {code}")
 
 
 def _check_handle(tags: list[Pair], seen: set[str], *, has_handles: bool) -> None:

@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.block_extents import BlockExtents, number
+from dxfcable.drawing.bytes.growing import Growing
 from dxfcable.drawing.bytes.pairs import Tags, distinct, find_tags, texts
 from dxfcable.drawing.excerpt import Obstacles
 
@@ -48,31 +49,20 @@ def obstacles(drawing: Scan) -> Obstacles:
 
     Text boxes and blocks are estimates on the generous side; paper space is left out.
     """
-    segments: list[Floats] = [np.empty((0, 4))]
-    boxes: list[Floats] = [np.empty((0, 4))]
+    segments, boxes, endless = (Growing(np.float64) for _ in range(3))
     extents = BlockExtents(drawing)
-    endless: list[Floats] = [np.empty((0, 4))]
     for batch in _batches(drawing):
-        segments.append(_segments(batch))
-        boxes += [_circles(batch), _words(batch), _inserts(batch, extents)]
-        boxes += [_filled(batch), _images(batch), _bulges(batch)]
-        endless.append(_endless(batch))
-    segments.append(_followed(_joined(endless), segments, boxes))
-    return Obstacles(_joined(segments), _joined(boxes))
-
-
-def _joined(parts: list[Floats]) -> Floats:
-    """Join rows, each column in one piece: that is how they are asked.
-
-    The parts are let go on the way, so that nothing is held twice.
-    """
-    result = np.empty((sum(len(part) for part in parts), 4), order="F")
-    at = len(result)
-    while parts:
-        part = parts.pop()
-        result[at - len(part) : at] = part
-        at -= len(part)
-    return result
+        segments.add(_segments(batch))
+        boxes.add(_circles(batch))
+        boxes.add(_words(batch))
+        boxes.add(_inserts(batch, extents))
+        for make in (_filled, _images, _bulges):
+            boxes.add(make(batch))
+        endless.add(_endless(batch))
+    lines, areas, followed = (rows.taken().reshape(-1, 4) for rows in (segments, boxes, endless))
+    if len(followed):
+        lines = np.concatenate([lines, _followed(followed, lines, areas)])
+    return Obstacles(lines, areas)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -261,11 +251,9 @@ def _endless(batch: _Batch) -> Floats:
     return _finite(np.concatenate([columns, back]))
 
 
-def _followed(endless: Floats, segments: list[Floats], boxes: list[Floats]) -> Floats:
+def _followed(endless: Floats, segments: Floats, boxes: Floats) -> Floats:
     """Follow lines without end well beyond everything else."""
-    if not len(endless):
-        return np.empty((0, 4))
-    points = np.concatenate([s.reshape(-1, 2) for s in (*segments, *boxes)] + [endless[:, :2]])
+    points = np.concatenate([segments.reshape(-1, 2), boxes.reshape(-1, 2), endless[:, :2]])
     size = float(np.max(np.ptp(points, axis=0), initial=1.0))
     direction = endless[:, 2:] / np.maximum(np.hypot(*endless[:, 2:].T), 1e-300)[:, None]
     return np.hstack([endless[:, :2], endless[:, :2] + _FAR * size * direction])

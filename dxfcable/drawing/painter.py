@@ -10,12 +10,10 @@ from collections import Counter
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
-import numpy as np
-
 from dxfcable.drawing.items import Painting, PlacedDiagram
 from dxfcable.drawing.painting.arrows import plan_arrows
 from dxfcable.drawing.painting.block_places import BlockPlaces
-from dxfcable.drawing.painting.clearance_view import draw_clearance
+from dxfcable.drawing.painting.clearance_view import draw_clearance, draw_clearance_row
 from dxfcable.drawing.painting.diagram_block import BETWEEN, BlockMaker, arranged
 from dxfcable.drawing.painting.drawn_ground import DrawnGround
 from dxfcable.drawing.painting.elevation_labels import clear_above, elevation_labels
@@ -95,10 +93,6 @@ def paint(
         If the plotting scale told is none.
     """
     plotting = _planned(layout, solution, settings, plot_scale)
-    # Column by column in memory: every free place asks for all of one coordinate at a time.
-    obstacles = type(obstacles)(
-        np.asfortranarray(obstacles.segments), np.asfortranarray(obstacles.boxes)
-    )
     painter = _Painter(
         layout=layout,
         obstacles=obstacles,
@@ -196,6 +190,7 @@ class _Painter:
         for view, group in zip(views, groups, strict=True):
             sketch = group.sketch
             self.origins += draw_tags(view, sketch)
+            self.origins += draw_clearance_row(view, sketch)
             self.items += sketch.items
             self.places.add_view(view.prefix, sketch.bounds(), view.cable.frame, sketch.items)
 

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from dxfcable.drawing.bytes.formats import refuse_other_formats
 from dxfcable.drawing.bytes.handle_values import read_handles
 from dxfcable.drawing.bytes.pairs import Tags, find_tags, names, plain_pairs, skip_prologue
 from dxfcable.errors import DrawingError
@@ -20,7 +21,6 @@ if TYPE_CHECKING:
 
     from dxfcable.drawing.bytes.pairs import Offsets, Pair
 
-BINARY_SENTINEL = b"AutoCAD Binary DXF"
 HANDLE_LIMIT = 1 << 64
 FOLLOWERS = (b"VERTEX", b"ATTRIB", b"SEQEND")
 _CODES = (0, 2, 5, 8, 67, 105, 1001)
@@ -230,7 +230,7 @@ def scan(data: bytes) -> Scan:
     DrawingError
         Where the file is no ASCII DXF, is cut off, or its sections do not nest; names the line.
     """
-    _refuse_other_formats(data)
+    refuse_other_formats(data)
     start = skip_prologue(data)
     tags, damaged = _all_tags(data, start)
     zeros = np.flatnonzero(tags.codes == 0)
@@ -314,32 +314,6 @@ def _all_tags(data: bytes, start: int) -> tuple[Tags, tuple[int, ...]]:
         fault=last.fault,
     )
     return tags, tuple(damaged)
-
-
-def _refuse_other_formats(data: bytes) -> None:
-    """Refuse what is no ASCII DXF, saying how to save it."""
-    remedy = "Save it from the CAD program as ASCII DXF, release 12 or later."
-    if data.startswith(BINARY_SENTINEL):
-        msg = "line 1: this is a binary DXF"
-        raise DrawingError(msg, code="binary-dxf", line=1, remedy=remedy)
-    if data[:6].startswith(b"AC1") and data[3:6].isdigit():
-        msg = "line 1: this is a DWG drawing, not a DXF"
-        raise DrawingError(msg, code="dwg", line=1, remedy=remedy)
-    if data[:2] in (b"\xff\xfe", b"\xfe\xff"):
-        msg = "line 1: this file is UTF-16"
-        raise DrawingError(msg, code="utf-16", line=1, remedy=remedy)
-    if not data or data.isspace():
-        msg = "line 1: the file is empty"
-        raise DrawingError(msg, code="not-dxf", line=1, remedy=remedy)
-    head = data[: 1 << 16]
-    if b"\n" not in head and b"\r" in head:
-        msg = "line 1: lines end with a carriage return only"
-        raise DrawingError(
-            msg,
-            code="carriage-returns",
-            line=1,
-            remedy="Save it with line feeds (LF or CRLF).",
-        )
 
 
 def _sections(draft: _Draft) -> tuple[Block, ...]:

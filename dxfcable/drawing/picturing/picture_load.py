@@ -19,8 +19,9 @@ from ezdxf.lldxf.encoding import decode_dxf_unicode, decode_mif_to_unicode
 from ezdxf.lldxf.tagger import binary_tags_loader
 
 from dxfcable.drawing.bytes.decode import codec
+from dxfcable.drawing.bytes.formats import BINARY_SENTINEL
 from dxfcable.drawing.bytes.pairs import skip_prologue
-from dxfcable.drawing.bytes.scan import BINARY_SENTINEL, scan
+from dxfcable.drawing.bytes.scan import scan
 from dxfcable.errors import DrawingError
 from dxfcable.model import Finding, Severity
 
