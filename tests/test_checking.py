@@ -7,6 +7,8 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 import pytest
+from hypothesis import given, settings
+from hypothesis import strategies as st
 
 from dxfcable.errors import LayoutError
 from dxfcable.model import Finding, LoadSymbol, Severity
@@ -218,3 +220,23 @@ def test_loads_at_supports_and_two_cables_at_a_head_are_checked_together() -> No
     assert masts[0] is not None
     assert masts[1] is not None
     assert masts[1] < masts[0] - 0.5 * 12.0
+
+
+@settings(max_examples=40, deadline=None)
+@given(
+    live=st.lists(st.floats(-4.0, 20.0), min_size=9, max_size=9),
+    corners=st.lists(st.floats(-18.0, -12.0), min_size=2, max_size=5),
+    weight=st.sampled_from([0.0, 0.15, 1.5]),
+)
+def test_no_state_lies_nearer_to_the_line_than_the_least_clearance(
+    live: list[float], corners: list[float], weight: float
+) -> None:
+    points = with_live(dict(enumerate(live, start=1)))
+    line = tuple((120.0 * k / (len(corners) - 1), y) for k, y in enumerate(corners))
+    combos = ("D + L", "D + 0.5L", "D + L [left half]")
+    whole = formed(crossing(points, clearance=line, weight=weight), *combos).clearance
+    alone = [
+        formed(crossing(points, clearance=line, weight=weight), combo).clearance for combo in combos
+    ]
+    assert whole is not None
+    assert whole.least == pytest.approx(min(c.least for c in alone if c is not None), abs=1e-9)
