@@ -32,7 +32,7 @@ def _attribute(
     )
 
 
-def support_block(sheet: Sheet) -> None:
+def support_block(sheet: Sheet, *, is_el_shown: bool = True) -> None:
     """Define CABLE-SUPPORT: a pin; mark and elevation above it."""
     block = sheet.doc.blocks.new("CABLE-SUPPORT")
     h = sheet.height
@@ -40,7 +40,7 @@ def support_block(sheet: Sheet) -> None:
     block.add_line((-1.2 * h, 0), (1.2 * h, 0))
     block.add_line((0, -1.2 * h), (0, 1.2 * h))
     _attribute(block, sheet, "MARK", (-3.2 * h, 1.6 * h), size=1.3)
-    _attribute(block, sheet, "EL", (0.8 * h, 1.6 * h))
+    _attribute(block, sheet, "EL", (0.8 * h, 1.6 * h), shown=is_el_shown)
     _attribute(block, sheet, "KIND", (0.8 * h, 3.2 * h), shown=False)
 
 

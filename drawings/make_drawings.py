@@ -1,4 +1,4 @@
-"""Write the six demonstration drawings beside this script: `python drawings/make_drawings.py`.
+"""Write the eight demonstration drawings beside this script: `python drawings/make_drawings.py`.
 
 The projects, places, people and numbers are our own invention; nothing of this was ever
 designed or built. Every run writes the same bytes.
@@ -26,9 +26,11 @@ def drawings() -> dict[str, Drawing]:
         canopy_roof,
         creek_footbridge,
         deck_plan,
+        gulch_pipe,
         long_walkway,
         pipe_crossing,
         twin_views,
+        weir_footbridge,
     )
 
     return {
@@ -38,6 +40,8 @@ def drawings() -> dict[str, Drawing]:
         "twin_views_mm.dxf": twin_views.draw(),
         "long_walkway_60.dxf": long_walkway.draw(),
         "deck_plan.dxf": deck_plan.draw(),
+        "weir_footbridge.dxf": weir_footbridge.draw(),
+        "gulch_pipe.dxf": gulch_pipe.draw(),
     }
 
 

@@ -37,7 +37,7 @@ def draw() -> Drawing:
     """Draw the sheet."""
     sheet = kit.new_sheet("R2010", insunits=6, imperial=False, paper=PAPER, height=0.25)
     sheet.doc.layers.add("S-CABL-CLRN", color=10, linetype="DASHED", lineweight=25)
-    cable_blocks.support_block(sheet)
+    cable_blocks.support_block(sheet, is_el_shown=False)
     cable_blocks.anchor_block(sheet)
     cable_blocks.load_block(sheet, ("D", "L", "S"))
     cable_blocks.data_block(sheet, DATA)
@@ -77,8 +77,15 @@ def _surroundings(sheet: kit.Sheet) -> None:
     kit.ground(sheet, [(-10.4, 0.5), (-0.8, 0.5)])
     kit.ground(
         sheet,
-        [(0.8, -0.6), (3.6, -2.2), (8.0, -3.4), (19.0, -3.9), (31.0, -3.7), (36.4, -2.4)]
-        + [(39.2, -0.6)],
+        [
+            (0.8, -0.6),
+            (3.6, -2.2),
+            (8.0, -3.4),
+            (19.0, -3.9),
+            (31.0, -3.7),
+            (36.4, -2.4),
+            (39.2, -0.6),
+        ],
     )
     kit.ground(sheet, [(40.8, 0.4), (50.0, 0.3)])
     kit.ground(sheet, [(52.4, 0.3), (55.0, 0.3)])
@@ -109,8 +116,8 @@ def _annotation(sheet: kit.Sheet) -> None:
     kit.dimension_row(sheet, [SPAN, RIGHT_ANCHOR[0]], -4.4, ["11 200"], -0.6)
     kit.level_mark(sheet, (16.2, -1.8), "WEIR POOL 298.200", 4.2)
     kit.level_mark(sheet, (-6.4, 0.5), "BANK 300.500", 3.2)
-    kit.leader_note(sheet, (37.2, ROOF), (42.2, 5.6), "RIDGE OF ROOF")
-    kit.leader_note(sheet, (37.6, deck(37.6)), (42.2, 2.4), "COVERED DECK, CAMBER 200")
+    kit.leader_note(sheet, (1.2, ROOF), (1.3, 3.5), "RIDGE OF ROOF")
+    kit.leader_note(sheet, (37.6, deck(37.6)), (41.6, 2.1), "COVERED DECK")
     kit.view_title(sheet, (13.0, -6.2), "ELEVATION, DOWNSTREAM CABLE", "1:100", 15.0)
     kit.view_title(sheet, (-17.0, -28.6), "FORCE DIAGRAM, CABLE C1", "SEE DIAGRAM", 13.0)
     kit.notes(

@@ -9,7 +9,8 @@ import pytest
 from ezdxf.filemanagement import readfile
 
 from drawings import long_walkway, make_drawings
-from dxfcable.job import Options, read_bytes, solve_bytes, strip_bytes
+from drawings.load_changes import CHANGES
+from dxfcable.job import Options, read_bytes, revise_bytes, solve_bytes, strip_bytes
 from dxfcable.model import Severity
 
 if TYPE_CHECKING:
@@ -22,6 +23,8 @@ NAMES = (
     "twin_views_mm.dxf",
     "long_walkway_60.dxf",
     "deck_plan.dxf",
+    "weir_footbridge.dxf",
+    "gulch_pipe.dxf",
 )
 # Loads, supports, closing strings, masts, stays, anchors, decks, data blocks, frames.
 COUNTS = {
@@ -31,6 +34,8 @@ COUNTS = {
     "twin_views_mm.dxf": (11, 4, 2, 2, 2, 2, 0, 2, 2),
     "long_walkway_60.dxf": (60, 2, 0, 2, 2, 2, 1, 1, 1),
     "deck_plan.dxf": (9, 2, 1, 2, 2, 2, 1, 1, 1),
+    "weir_footbridge.dxf": (7, 2, 1, 2, 2, 2, 1, 1, 1),
+    "gulch_pipe.dxf": (8, 2, 0, 0, 0, 0, 1, 1, 1),
 }
 RELEASES = {
     "canopy_roof.dxf": "AC1015",
@@ -39,6 +44,8 @@ RELEASES = {
     "twin_views_mm.dxf": "AC1032",
     "long_walkway_60.dxf": "AC1021",
     "deck_plan.dxf": "AC1027",
+    "weir_footbridge.dxf": "AC1024",
+    "gulch_pipe.dxf": "AC1018",
 }
 # Cable, its rule, and the loads that form it, left to right; the scenario's own numbers.
 _LOADS_A = (11.5, 12.5, 12.5, 15.0, 15.0, 12.5, 12.5, 11.5)
@@ -64,6 +71,11 @@ CABLES: dict[str, tuple[tuple[str, str, tuple[float, ...]], ...]] = {
     ),
     # 1.25 kPa on 4.0 x 2.4 m a hanger; at the sixth an opening of 1.0 x 0.8 m.
     "deck_plan.dxf": (("C1", "sag", (*[12.0] * 5, 11.0, *[12.0] * 3)),),
+    "weir_footbridge.dxf": (("C1", "sag", (12.4, 12.0, 12.0, 13.5, 12.0, 12.0, 12.4)),),
+    # Pipe and fluid at each saddle, a valve at the fifth.
+    "gulch_pipe.dxf": (
+        ("C1", "max_tension", tuple(d + 1.9 for d in (3.2, 3.0, 3.0, 3.0, 4.4, 3.0, 3.0, 3.2))),
+    ),
 }
 KINDS = ("LOAD", "SUPP", "STRG", "MAST", "STAY", "ANCH", "DECK", "DATA", "FRAM")
 
@@ -149,3 +161,33 @@ def test_mirrored_supports_stand_where_their_base_points_are(fresh: Path) -> Non
     places = {s.mark: (s.x, s.y, s.stated_elevation) for s in outcome.layout.supports}
     assert places["S2"] == (32000.0, 8400.0, 108400.0)
     assert places["S4"] == (65000.0, 7600.0, 107600.0)
+
+
+@pytest.mark.parametrize("name", CHANGES)
+def test_a_load_change_is_answered_from_the_issued_drawing(fresh: Path, name: str) -> None:
+    change = CHANGES[name]
+    issued, before = change.issue((fresh / name).read_bytes())
+    revised, after = change.revise(issued)
+    assert {f.severity for f in (*before.findings, *after.findings)} == {Severity.NOTE}
+    assert before.solution is not None
+    assert after.solution is not None
+    (old,), (new,) = before.solution.cables, after.solution.cables
+    assert [s.combo for s in new.states] == list(change.combos)
+    assert new.envelope is not None
+    # Whatever the shape: the supports carry what was added, and the pull is one and the same.
+    added = sum(n.load for n in new.nodes) - sum(n.load for n in old.nodes)
+    assert added > 0.0
+    assert sum(r.vertical for r in new.reactions) - sum(r.vertical for r in old.reactions) == (
+        pytest.approx(added, rel=1e-9)
+    )
+    if change.is_cut:
+        assert new.status == "cut"
+        assert [s.unstressed_length for s in new.segments] == pytest.approx(
+            [s.unstressed_length for s in old.segments], rel=1e-12
+        )
+    else:
+        assert new.max_tension == pytest.approx(old.max_tension, rel=1e-9)
+        assert new.sag > old.sag
+    # The record keeps the loads of the table: asked again without it, nothing changes.
+    assert revise_bytes(revised, Options(), change.revision)[0] == revised
+    assert strip_bytes(revised)[0] == (fresh / name).read_bytes()

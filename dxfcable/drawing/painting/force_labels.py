@@ -20,7 +20,7 @@ if TYPE_CHECKING:
 
     from dxfcable.drawing.painting.arrows import ArrowPair
     from dxfcable.drawing.painting.elevation_view import View
-    from dxfcable.model import Anchorage
+    from dxfcable.model import Anchorage, LoadPoint
 
 
 def force_labels(view: View, arrows: tuple[ArrowPair, ...]) -> Iterator[Label]:
@@ -107,7 +107,7 @@ def overruled_labels(view: View) -> Iterator[Label]:
     nodes = [node for node in view.formed.nodes if not node.is_support]
     for name, node, load in zip(names, nodes, view.cable.loads, strict=True):
         if load.drawn:
-            text = f"{view.wording.load(node.load)} (drawn {load.drawn})"
+            text = f"{view.wording.load(node.load)} (drawn {_drawn_words(view, load)})"
             places = about_point((load.x, load.y), text_width(text, h), h, first_side=-1)
             yield Label(
                 id=f"{view.prefix}/load/{name}",
@@ -116,6 +116,15 @@ def overruled_labels(view: View) -> Iterator[Label]:
                 places=places,
                 target=((load.x, load.y), (load.x, load.y)),
             )
+
+
+def _drawn_words(view: View, load: LoadPoint) -> str:
+    """Give what the drawing states: of several cases only those that are others now."""
+    drawn, used = load.drawn_cases or (), dict(load.cases)
+    changed = [(case, value) for case, value in drawn if used.get(case) != value]
+    if len(drawn) < 2 or not changed:
+        return load.drawn
+    return " ".join(f"{case}={view.wording.load(value)}" for case, value in changed)
 
 
 def letter_labels(view: View) -> Iterator[Label]:

@@ -157,6 +157,7 @@ def _state_shapes(view: View) -> list[_Columns]:
     return [
         (tuple(forces), *((pair,) for pair in extremes)),
         (tuple(forces), tuple(extremes)),
+        ((*forces, *extremes[:1]), tuple(extremes[1:])),
         (tuple(tables),),
         (*((pair,) for pair in forces), tuple(extremes)),
         ((*forces, *extremes[:1]), *((pair,) for pair in extremes[1:])),
