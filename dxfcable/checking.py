@@ -11,21 +11,18 @@ from typing import TYPE_CHECKING
 
 from dxfcable.anchorages import MovedHead, anchorages
 from dxfcable.clearances import least_clearance
+from dxfcable.enveloping import envelope
 from dxfcable.gathering import governs, reactions, segments
 from dxfcable.model import (
-    Envelope,
-    Extreme,
     Finding,
     Node,
-    PointRange,
-    SegmentRange,
     Severity,
     State,
     SupportShift,
 )
-from dxfcable.quantities import format_force
 from dxfcable.remarks import Remarks
 from dxfcable.responding import TEMPERATURE, respond, temperatures
+from dxfcable.state_remarks import say_idle, say_states, say_weightless
 from dxfcable.statics.combinations import CombinationError
 from dxfcable.statics.expansion import expand
 
@@ -40,8 +37,6 @@ if TYPE_CHECKING:
     from dxfcable.settings import Settings
     from dxfcable.statics.catenary_shape import Catenary
     from dxfcable.statics.combinations import Combination
-
-_SHOWN = 4  # states that a finding names before it only counts
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -128,13 +123,19 @@ def check(
     for number, (one, result) in enumerate(zip(built, formed, strict=True)):
         remarks = Remarks(one.cable)
         shapes = all_shapes[number]
+        carried = {*_cases(one.cable), *([TEMPERATURE] if one.delta_t else [])}
+        acting = [k for k, c in enumerate(combinations) if carried & set(dict(c.terms))]
         checked = tuple(
-            _state(one, result, combination, shape, joints[k], states, (k, number))
-            for k, (combination, shape) in enumerate(zip(combinations, shapes, strict=True))
+            _state(one, result, combinations[k], shapes[k], joints[k], states, (k, number))
+            for k in acting
         )
-        _remark(layout, one, result, checked, settings, remarks)
+        say_idle(
+            [combinations[k].text for k in range(len(combinations)) if k not in acting], remarks
+        )
+        say_states(layout, one, result, checked, settings, remarks)
+        say_weightless(one.cable, [combinations[k] for k in acting], remarks)
         findings += remarks.findings
-        whole = replace(result, states=checked, envelope=_envelope(result, checked))
+        whole = replace(result, states=checked, envelope=envelope(result, checked))
         results.append(
             _with_clearance(
                 layout,
@@ -142,7 +143,7 @@ def check(
                 whole,
                 [
                     (result.under, _standing_shape(one)),
-                    *((s.combo, shape) for s, shape in zip(checked, shapes, strict=True) if shape),
+                    *((combinations[k].text, shape) for k in acting if (shape := shapes[k])),
                 ],
                 findings,
             )
@@ -298,50 +299,6 @@ def _nodes(formed: FormedCable, shape: Catenary, datum: float) -> tuple[Node, ..
     )
 
 
-def _envelope(formed: FormedCable, states: Sequence[State]) -> Envelope:
-    """Find the extremes over the states that have a shape, the formed one among them."""
-    good = [s for s in states if not s.fault]
-    names = [formed.under, *(s.combo for s in good)]
-    pieces = [formed.segments, *(s.segments for s in good)]
-    nodes = [formed.nodes, *(s.nodes for s in good)]
-
-    def most(values: Sequence[float]) -> Extreme:
-        k = max(range(len(values)), key=lambda i: values[i])
-        return Extreme(value=values[k], combo=names[k])
-
-    def least(values: Sequence[float]) -> Extreme:
-        k = min(range(len(values)), key=lambda i: values[i])
-        return Extreme(value=values[k], combo=names[k])
-
-    tensions = [[s.tension for s in row] for row in pieces]
-    lows = [[min(s.tension_left, s.tension_right) for s in row] for row in pieces]
-    heights = [[n.elevation for n in row] for row in nodes]
-    uplifts = [(a.uplift, s.combo) for s in good for j in s.anchorages for a in j.anchors]
-    top = max(uplifts, key=lambda pair: pair[0], default=None)
-    return Envelope(
-        max_tension=most([max(row) for row in tensions]),
-        min_tension=least([min(row) for row in lows]),
-        max_uplift=Extreme(value=top[0], combo=top[1]) if top else None,
-        points=tuple(
-            PointRange(
-                mark=node.mark,
-                lowest=least([row[k] for row in heights]),
-                highest=most([row[k] for row in heights]),
-            )
-            for k, node in enumerate(formed.nodes)
-            if not node.is_support
-        ),
-        segments=tuple(
-            SegmentRange(
-                name=piece.name,
-                most=most([row[k] for row in tensions]),
-                least=least([row[k] for row in lows]),
-            )
-            for k, piece in enumerate(formed.segments)
-        ),
-    )
-
-
 def _standing_shape(one: Built) -> Shape:
     """Return a cable's shape as it stands."""
     assert one.shape is not None
@@ -362,61 +319,3 @@ def _with_clearance(
     found = least_clearance(layout, one.cable, shapes, remarks)
     findings += remarks.findings
     return replace(formed, clearance=found)
-
-
-def _remark(
-    layout: Layout,
-    one: Built,
-    formed: FormedCable,
-    states: Sequence[State],
-    settings: Settings,
-    remarks: Remarks,
-) -> None:
-    """Say what an engineer must see in the states."""
-    name = f"cable {formed.mark}"
-    unit, digits = layout.force_unit or "", settings.show.force_digits
-    for state in states:
-        if state.fault:
-            remarks.say(
-                "no-shape",
-                f"{name}: no determinate shape under {state.combo}: {state.fault}",
-                Severity.WARNING,
-            )
-    slack: dict[str, list[str]] = {}
-    for state in states:
-        for mark in state.slack:
-            slack.setdefault(mark, []).append(state.combo)
-    for mark, combos in slack.items():
-        remarks.say("slack-hanger", f"{name}: hanger {mark} is slack {_under(combos)}", _SEE)
-    pull = formed.horizontal or 0.0
-    low = [s.combo for s in states if s.horizontal < settings.limits.min_pull * pull]
-    if low:
-        remarks.say(
-            "slack-cable",
-            f"{name}: its pull falls under {settings.limits.min_pull:g} of the formed pull "
-            f"{_under(low)}",
-            _SEE,
-        )
-    if one.cable.capacity is not None:
-        over = [s for s in states if s.max_tension > one.cable.capacity]
-        for level in dict.fromkeys(s.level for s in over):
-            here = [s for s in over if s.level == level]
-            worst = max(here, key=lambda s: s.max_tension)
-            remarks.say(
-                "over-capacity",
-                f"{name}: largest tension {format_force(worst.max_tension, unit, digits)} "
-                f"({level} level, {worst.combo}) is over its CAPACITY "
-                f"{format_force(one.cable.capacity, unit, digits)} (utilization "
-                f"{worst.max_tension / one.cable.capacity:.3f}), {_under([s.combo for s in here])}",
-                _SEE,
-            )
-
-
-_SEE = Severity.WARNING
-
-
-def _under(combos: Sequence[str]) -> str:
-    """Name combinations, or the first of them and how many there are."""
-    if len(combos) <= _SHOWN:
-        return f"under {', '.join(combos)}"
-    return f"under {', '.join(combos[:_SHOWN])} and {len(combos) - _SHOWN} more"

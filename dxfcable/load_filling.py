@@ -152,9 +152,10 @@ def merged(load: LoadPoint, values: Sequence[tuple[str, Force]], unit: str) -> _
 def _filled(load: LoadPoint, entry: Entry, unit: str) -> LoadPoint:
     """Give a point the table's values."""
     cases = merged(load, entry.values, unit)
-    drawn = "" if _same(cases, load.cases) else _as_drawn(load, unit)
     # The very number drawn, though it differs by less than shows: it tells later edits.
     stated = load.cases if load.drawn_cases is None else load.drawn_cases
+    words = load.drawn or _as_drawn(replace(load, cases=stated), unit)
+    drawn = "" if _same(cases, stated) else words
     drawn_cases = None if cases == stated else stated
     return replace(load, cases=cases, source="csv", drawn=drawn, drawn_cases=drawn_cases)
 
@@ -206,7 +207,9 @@ def _tell(spots: Sequence[Spot], entries: Mapping[Key, Entry], unit: str, said: 
         said.note(Code.FORCE_UNITS_MIXED, text)
 
 
-def without_mended(layout: Layout, changed: Layout, filled: Mapping[Key, LoadPoint]) -> list[Finding]:
+def without_mended(
+    layout: Layout, changed: Layout, filled: Mapping[Key, LoadPoint]
+) -> list[Finding]:
     """Leave out findings of the reader that the table has mended."""
     # The place too: points within one block share its handle and line.
     origins = [load.origin for load in filled.values()]

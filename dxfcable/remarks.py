@@ -18,6 +18,11 @@ class Remarks:
         self.findings: list[Finding] = []
 
     @property
+    def name(self) -> str:
+        """What sentences call the cable."""
+        return f"cable {self._cable.mark}"
+
+    @property
     def is_stopped(self) -> bool:
         """Whether one of them stops the cable."""
         return any(f.severity is Severity.ERROR for f in self.findings)

@@ -144,6 +144,7 @@ def stand(
                 remarks,
                 status=CUT,
             )
+            formed = replace(formed, delta_t=standing.delta_t)
             own = replace(built[number], shape=shape)
             result.append(Stood(formed=formed, combination=combination, built=own))
         findings += remarks.findings
