@@ -386,6 +386,25 @@ def strip(
     raise typer.Exit(strip_all(drawings, Asked(as_json=as_json), target))
 
 
+@app.command(
+    cls=PlainCommand,
+    epilog="Examples: dxfcable verify issued.dxf; dxfcable verify issued/*.dxf --json",
+)
+def verify(
+    drawings: Drawings,
+    units: Units = None,
+    force_unit: ForceUnit = None,
+    settings: SettingsFile = None,
+    as_json: AsJson = False,
+) -> None:
+    """Prove issued drawings from their own geometry, and say if they are stale."""
+    from dxfcable.commands.running import Asked
+    from dxfcable.commands.verifying import verify_all
+
+    asked = Asked(units=units, force_unit=force_unit, settings=settings, as_json=as_json)
+    raise typer.Exit(verify_all(drawings, asked))
+
+
 def main() -> None:
     """Run the command line; a fault of our own shows its traceback and exits 3."""
     from dxfcable.errors import DxfcableError
