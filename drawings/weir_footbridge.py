@@ -56,7 +56,7 @@ def _cable(sheet: kit.Sheet) -> None:
         sheet.insert("CABLE-SUPPORT", head, "S-CABL-SUPP", {"MARK": mark, "EL": elevation})
         sheet.line(head, (head[0], 0.6), "S-CABL-MAST")
         sheet.line(head, anchor, "S-CABL-STAY")
-        values = {"MARK": label, "EA": "150000 kN", "WEIGHT": "620 kN", "MU": "0.5"}
+        values = {"MARK": label, "EA": "150000 kN", "WEIGHT": "2000 kN", "MU": "0.5"}
         sheet.insert("CABLE-ANCHOR", anchor, "S-CABL-ANCH", values)
     sheet.line(LEFT, RIGHT, "S-CABL-STRG")
     stations = [k * PANEL for k in range(PANELS + 1)]

@@ -52,7 +52,7 @@ LOOKS = {
     "reaction": LayerLook(1, 25),
     "hanger": LayerLook(7, 18),
     "table": LayerLook(7, 25),
-    "revision": LayerLook(6, 35),
+    "revision": LayerLook(6, 18),
 }
 
 
