@@ -1,0 +1,1 @@
+"""Proofs of an issued drawing: its geometry against the laws of statics, its record."""

@@ -1,0 +1,132 @@
+"""What the drafter changed since the record: load texts, supports, the rule."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from dxfcable.model import RuleKind
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from dxfcable.model import Cable, LoadPoint, Support
+    from dxfcable.recorded import CableRecord, RecordedLoad
+
+_SAME = 1e-9  # relative: the record holds every digit
+
+
+def reasons(
+    record: CableRecord, cable: Cable | None, supports: Sequence[Support], grain: float
+) -> list[str]:
+    """Say what differs between a cable as recorded and as it is drawn now.
+
+    Parameters
+    ----------
+    record : CableRecord
+        As issued.
+    cable : Cable or None
+        As drawn now, None where it no longer reads.
+    supports : sequence of Support
+        All that are drawn now, for a cable that lost one.
+    grain : float
+        What rounding makes of a coordinate [length].
+
+    Returns
+    -------
+    list of str
+        One sentence without a full stop for each change; empty where nothing changed.
+    """
+    if cable is None:
+        return ["the cable no longer reads", *_lost(record, supports, grain)]
+    found = _supports(record, cable, grain)
+    found += _loads("load", record.loads, cable.loads, grain)
+    supported = [point for _, point in cable.support_loads]
+    found += _loads("load at a support", [p for _, p in record.support_loads], supported, grain)
+    return found + _governing(record, cable)
+
+
+def _lost(record: CableRecord, supports: Sequence[Support], grain: float) -> list[str]:
+    """Name the supports that no longer stand where they were."""
+    found = []
+    for before in record.supports:
+        away = [math.dist((before.x, before.y), (now.x, now.y)) for now in supports]
+        if not away or min(away) > 2.0 * grain:
+            by = f", the nearest is {min(away):.6g} off" if away else ""
+            place = f"({before.x:.6g}, {before.y:.6g})"
+            found.append(f"support {before.mark} no longer stands at {place}{by}")
+    return found
+
+
+def _supports(record: CableRecord, cable: Cable, grain: float) -> list[str]:
+    if len(record.supports) != len(cable.supports):
+        return [f"{len(record.supports)} supports were drawn, now {len(cable.supports)}"]
+    found = []
+    for before, now in zip(record.supports, cable.supports, strict=True):
+        off = math.dist((before.x, before.y), (now.x, now.y))
+        if off > 2.0 * grain:
+            found.append(f"support {now.mark} was moved by {off:.6g}")
+    return found
+
+
+def _loads(
+    word: str, before: Sequence[RecordedLoad], now: Sequence[LoadPoint], grain: float
+) -> list[str]:
+    """Compare loads in order; a different number of them is told as that."""
+    if len(before) != len(now):
+        return [f"{len(before)} of kind {word} were drawn, now {len(now)}"]
+    found = []
+    for old, new in zip(before, now, strict=True):
+        off = abs(old.x - new.x)
+        if off > 2.0 * grain:
+            found.append(f"{word} {new.mark} was moved by {off:.6g}")
+        if not _is_same(dict(old.drawn), dict(new.cases)):
+            text = f"{word} {new.mark} was {_cases(old.drawn)}, now {_cases(new.cases)}"
+            found.append(text)
+    return found
+
+
+def _is_same(before: dict[str, float], now: dict[str, float]) -> bool:
+    return before.keys() == now.keys() and all(
+        math.isclose(value, now[case], rel_tol=_SAME, abs_tol=0.0) for case, value in before.items()
+    )
+
+
+def _cases(cases: Sequence[tuple[str, float]]) -> str:
+    """Write cases and values, as D=12 L=6."""
+    if not cases:
+        return "nothing that reads"
+    return " ".join(
+        f"{value:g}" if case == "load" else f"{case}={value:g}" for case, value in cases
+    )
+
+
+def _governing(record: CableRecord, cable: Cable) -> list[str]:
+    """Compare what the data block says with what was used; what it leaves open may be anything."""
+    found = []
+    rule = cable.rule
+    if rule is not None:
+        before = record.rule
+        is_same = rule.kind is before.kind and math.isclose(
+            rule.value, before.value, rel_tol=_SAME, abs_tol=_SAME
+        )
+        if rule.kind is RuleKind.THROUGH and rule.kind is before.kind:
+            there, here = before.point or (math.nan, math.nan), rule.point or (0.0, 0.0)
+            is_same = math.dist(there, here) <= _SAME * max(1.0, *(abs(c) for c in here))
+        if not is_same:
+            text = f"the data block says {rule.kind.name} {rule.value:g}, the record"
+            found.append(f"{text} {before.kind.name} {before.value:g}")
+    if cable.under is not None and plain_under(cable.under) != plain_under(record.under):
+        found.append(f'the data block says UNDER "{cable.under}", the record "{record.under}"')
+    for word, before_value, now in (
+        ("WEIGHT", record.weight, cable.weight),
+        ("EA", record.ea or 0.0, cable.ea or 0.0),
+    ):
+        if not math.isclose(before_value, now, rel_tol=_SAME, abs_tol=0.0):
+            found.append(f"{word} was {before_value:g}, now {now:g}")
+    return found
+
+
+def plain_under(under: str) -> str:
+    """Leave out a combination's level and its blanks."""
+    return "".join(under.rpartition(":")[2].split())

@@ -1,0 +1,131 @@
+"""Entities of ours that are missing, altered or copied, and what else stands on our layers."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from collections.abc import Mapping, Sequence
+
+    from dxfcable.drawing.issued import Issued, IssuedEntity
+    from dxfcable.model import Finding, Point
+    from dxfcable.verifying.sheet import Sheet
+    from dxfcable.verifying.tally import Tally
+
+WHOLE, READS = "entities as issued", "drawing reads"
+# Layers on which nothing may stand that was not proved.
+_OURS_ALONE = frozenset(
+    (
+        *("profile", "force_diagram", "tension", "elevation", "reaction"),
+        *("closing_string", "hanger", "letters"),
+    )
+)
+_LONGEST_LEADER = 16.0  # text heights
+
+
+def hold_whole(
+    tallies: Mapping[str, Tally],
+    sheet: Sheet,
+    issued: Issued,
+    redrawn: frozenset[str],
+    fault: Finding | None,
+    places: Sequence[tuple[Point, Point]],
+) -> None:
+    """Tell copies, edits and strangers, each with the cable that it belongs to.
+
+    Parameters
+    ----------
+    tallies : mapping of str to Tally
+        By the first part of ids.
+    redrawn : frozenset of str
+        Handles of what was moved by itself.
+    fault : Finding or None
+        Why the drafter's drawing does not read.
+    places : sequence of (Point, Point)
+        What labels name, for their leaders.
+    """
+    if not tallies:
+        return
+    first = next(iter(tallies.values()))
+    for prefix, tally in tallies.items():
+        own = [e for name, e in sheet.named.items() if name.startswith(f"{prefix}/")]
+        for entity in own:
+            if entity.was_edited:
+                tally.fail(WHOLE, f'{entity.id} was edited by hand: "{entity.text}"', entity)
+            elif entity.handle is not None and entity.handle in redrawn:
+                tally.fail(WHOLE, f"{entity.id} was moved by itself", entity)
+            else:
+                tally.hold(WHOLE, 0.0, 1.0, "", entity)
+        if fault is not None:
+            tally.fail(READS, f"the drafter's drawing no longer reads: {fault.text}")
+    for copy in issued.copies:
+        tally = tallies.get(copy.id.partition("/")[0], first)
+        tally.fail(WHOLE, f"{copy.kind} is a copy of {copy.id}", copy)
+    _hold_leaders(tallies, sheet, places)
+    for entity in _strangers(sheet, places):
+        what = f'{entity.kind} "{entity.text}"' if entity.text else entity.kind
+        text = f"{what} on {entity.layer} is none of the entities issued, or stands out of place"
+        first.fail(WHOLE, text, entity)
+    for entity in _doubled(issued):
+        first.fail(WHOLE, f'{entity.kind} "{entity.text}" stands twice in one place', entity)
+
+
+def _hold_leaders(
+    tallies: Mapping[str, Tally], sheet: Sheet, places: Sequence[tuple[Point, Point]]
+) -> None:
+    """Hold marked leaders: each ends on an object that a label names."""
+    for name, entity in sheet.named.items():
+        tally = tallies.get(name.partition("/")[0])
+        if tally is not None and name.endswith("/leader") and entity.kind == "LINE":
+            off = min((_off(entity.end, place) for place in places), default=0.0)
+            tally.hold(WHOLE, off, 8.0 * sheet.grain, f"{name} points at nothing", entity)
+
+
+def _strangers(sheet: Sheet, places: Sequence[tuple[Point, Point]]) -> list[IssuedEntity]:
+    """List what is on our layers and none of ours; leaders end on what their label names."""
+    found = []
+    leaders: set[tuple[Point, ...]] = set()
+    for entity in sheet.loose:
+        if not entity.roles & _OURS_ALONE:
+            continue
+        is_leader = not sheet.has_marks and _is_leader(entity, sheet, places)
+        if not is_leader or entity.points in leaders:
+            found.append(entity)
+        elif is_leader:
+            leaders.add(entity.points)
+    return found
+
+
+def _doubled(issued: Issued) -> list[IssuedEntity]:
+    """List texts and lines of tables that stand exactly upon another one."""
+    seen: set[tuple[object, ...]] = set()
+    found = []
+    for entity in issued.unmarked:
+        if "table" not in entity.roles:
+            continue
+        key = (entity.kind, entity.layer.casefold(), entity.points, entity.text)
+        if key in seen:
+            found.append(entity)
+        seen.add(key)
+    return found
+
+
+def _is_leader(entity: IssuedEntity, sheet: Sheet, places: Sequence[tuple[Point, Point]]) -> bool:
+    """Tell whether a line runs from beside an object to that object."""
+    if entity.kind != "LINE" or entity.is_chain or entity.roles == {"profile"}:
+        return False
+    near = 8.0 * sheet.grain
+    is_short = math.dist(entity.start, entity.end) <= _LONGEST_LEADER * sheet.height
+    at_end = any(_off(entity.end, place) <= near for place in places)
+    at_start = any(_off(entity.start, place) <= near for place in places)
+    return is_short and at_end and not at_start
+
+
+def _off(point: Point, line: tuple[Point, Point]) -> float:
+    """Give the distance of a point from a line between two points."""
+    (ax, ay), (bx, by) = line
+    square = (bx - ax) ** 2 + (by - ay) ** 2
+    share = ((point[0] - ax) * (bx - ax) + (point[1] - ay) * (by - ay)) / square if square else 0.0
+    share = min(1.0, max(0.0, share))
+    return math.dist(point, (ax + share * (bx - ax), ay + share * (by - ay)))
