@@ -26,7 +26,24 @@ class Built:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Standing:
-    """What a cut cable stands by: its record, and the temperature it stands at [K]."""
+    """What a cut cable stands by.
+
+    Attributes
+    ----------
+    record : CableRecord
+        Its unstressed lengths, and what it was formed under.
+    delta_t : float
+        Change from the reference temperature that it stands at [K].
+    is_revised : bool
+        Whether what the drawing says now counts; else it stands as recorded.
+    hangers : tuple of float or None
+        Lengths of its hangers as formed, which they keep [length]; empty where not known.
+    formed_pull : float or None
+        Its pull as formed [force].
+    """
 
     record: CableRecord
     delta_t: float = 0.0
+    is_revised: bool = False
+    hangers: tuple[float | None, ...] = ()
+    formed_pull: float | None = None

@@ -22,7 +22,13 @@ from dxfcable.model import (
 )
 from dxfcable.remarks import Remarks
 from dxfcable.responding import TEMPERATURE, respond, temperatures
-from dxfcable.state_remarks import say_idle, say_states, say_weightless
+from dxfcable.state_remarks import (
+    say_bowed,
+    say_idle,
+    say_states,
+    say_weightless,
+    slack_hangers,
+)
 from dxfcable.statics.combinations import CombinationError
 from dxfcable.statics.expansion import expand
 
@@ -133,6 +139,9 @@ def check(
             [combinations[k].text for k in range(len(combinations)) if k not in acting], remarks
         )
         say_states(layout, one, result, checked, settings, remarks)
+        say_bowed(
+            [(combinations[k].text, x) for k in acting if (x := shapes[k])], one.cable, remarks
+        )
         say_weightless(one.cable, [combinations[k] for k in acting], remarks)
         findings += remarks.findings
         whole = replace(result, states=checked, envelope=envelope(result, checked))
@@ -238,7 +247,10 @@ def _state(
     """Gather one state of one cable."""
     k, number = place
     delta_t = one.delta_t * dict(combination.terms).get(TEMPERATURE, 0.0)
+    cable = one.cable
     if shape is None:
+        loads = [0.0, *states.cables[number].loads[k].tolist(), 0.0]
+        idle = [replace(node, load=load) for node, load in zip(formed.nodes, loads, strict=True)]
         return State(
             combo=combination.text,
             level=combination.level,
@@ -247,8 +259,8 @@ def _state(
             max_tension=math.nan,
             delta_t=delta_t,
             fault=states.faults[number][k],
+            slack=slack_hangers(idle, cable),
         )
-    cable = one.cable
     keys = {s.key for s in cable.supports}
     ends = (cable.supports[0], cable.supports[-1])
     at = ((shape.x[0], shape.y[0]), (shape.x[-1], shape.y[-1]))
@@ -270,11 +282,7 @@ def _state(
             SupportShift(support=s.key, mark=s.mark, dx=float(x) - s.x, dy=float(y) - s.y)
             for s, (x, y) in zip(ends, at, strict=True)
         ),
-        slack=tuple(
-            node.mark
-            for node, load in zip(nodes[1:-1], cable.loads, strict=True)
-            if node.hanger is not None and node.load <= 0.0 and not load.clamped
-        ),
+        slack=slack_hangers(nodes, cable),
     )
 
 

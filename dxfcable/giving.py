@@ -9,14 +9,20 @@ from typing import TYPE_CHECKING
 from dxfcable.recorded import RecordedHead, RecordedStay
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Mapping, Sequence
+    from collections.abc import Collection, Iterable, Mapping, Sequence
 
     from dxfcable.built import Standing
     from dxfcable.model import Anchorage, Finding, Layout, Mast, Point, Stay
 
 
+_SAME_FOOT = 1e-6
+
+
 def giving_heads(
-    layout: Layout, formed: Sequence[Anchorage], findings: list[Finding]
+    layout: Layout,
+    formed: Sequence[Anchorage],
+    cut: Collection[int],
+    findings: list[Finding],
 ) -> tuple[tuple[int, RecordedHead], ...]:
     """Find the supports that give after forming, standing where they are drawn.
 
@@ -24,6 +30,8 @@ def giving_heads(
     ----------
     formed : sequence of Anchorage
         Forces of masts and stays as formed.
+    cut : collection of int
+        Keys of supports whose cables were cut while they were rigid: they stay so.
     findings : list of Finding
         What has to be said is added.
 
@@ -38,6 +46,8 @@ def giving_heads(
         if mast is None or not any(_stiffness(stay) for stay in stays):
             continue
         reason = _why_rigid(stays, found)
+        if found.support in cut:
+            reason = "its cables were cut while it was held; --reform lets it give"
         if reason:
             findings.append(_held_note(found, reason, stays[0]))
             continue
@@ -62,11 +72,12 @@ def giving_heads(
 
 
 def recorded_heads(
-    layout: Layout, standing: Mapping[str, Standing]
+    layout: Layout, standing: Mapping[str, Standing], findings: list[Finding]
 ) -> tuple[tuple[int, RecordedHead], ...]:
     """Return the supports that give under cables already cut, their members as drawn now.
 
-    A head that holds a cable which is formed in this run stays where it is drawn.
+    A head that holds a cable which is formed in this run stays where it is drawn. What was
+    changed of the members is added to `findings`.
     """
     result = {}
     for cable in layout.cables:
@@ -80,13 +91,31 @@ def recorded_heads(
             if head is None or mast is None or len(stays) != len(head.stays):
                 continue
             if all(c.mark in standing for c in others):
-                feet = zip(head.stays, stays, strict=True)
+                pairs = zip(head.stays, stays, strict=True)
                 result[support.key] = replace(
                     head,
                     mast_foot=mast.foot,
-                    stays=tuple(replace(old, foot=stay.foot) for old, stay in feet),
+                    stays=tuple(
+                        _as_drawn(support.mark, old, stay, findings) for old, stay in pairs
+                    ),
                 )
     return tuple(result.items())
+
+
+def _as_drawn(support: str, old: RecordedStay, stay: Stay, findings: list[Finding]) -> RecordedStay:
+    """Give a recorded stay the foot and the stiffness that are drawn now; its length stays."""
+    said = []
+    off = math.dist(old.foot, stay.foot)
+    if off > _SAME_FOOT * max(old.length, 1.0):
+        said.append(f"its foot was moved by {off:.6g}, its length kept")
+    ea = _stiffness(stay) or old.ea
+    if not math.isclose(ea, old.ea, rel_tol=1e-9):
+        said.append(f"its EA is {ea:g} and was {old.ea:g}; its unstressed length is kept")
+    if said:
+        findings.append(
+            _stay_note("stay-changed", f"stay of support {support}: {', '.join(said)}", stay)
+        )
+    return replace(old, foot=stay.foot, ea=ea)
 
 
 def members_at(layout: Layout, support: int) -> tuple[Mast | None, tuple[Stay, ...]]:
@@ -132,13 +161,19 @@ def _why_rigid(stays: Sequence[Stay], found: Anchorage) -> str:
 
 def _held_note(found: Anchorage, reason: str, stay: Stay) -> Finding:
     """Say that a head is held."""
+    text = f"support {found.mark} is held rigid in all states: {reason}"
+    return _stay_note("supports-rigid", text, stay)
+
+
+def _stay_note(code: str, text: str, stay: Stay) -> Finding:
+    """Make a note about a stay."""
     from dxfcable.model import Finding, Severity
 
     origin = stay.origin
     return Finding(
-        code="supports-rigid",
+        code=code,
         severity=Severity.NOTE,
-        text=f"support {found.mark} is held rigid in all states: {reason}",
+        text=text,
         handle=origin.handle,
         line=origin.line,
         layer=origin.layer or None,

@@ -32,8 +32,9 @@ class Forming:
         Mark of the cable that the rule is for.
     under : str or None
         Combination that overrules the drawing's UNDER.
-    combos : tuple of str
-        Combinations to check, as typed.
+    combos, combos_are_recorded : tuple of str, bool
+        Combinations to check, as typed; whether that was in an earlier run, so that those which
+        no longer fit are only told.
     cut : bool
         Whether the cables count as cut from now on.
     """
@@ -42,6 +43,7 @@ class Forming:
     cable: str | None = None
     under: str | None = None
     combos: tuple[str, ...] = ()
+    combos_are_recorded: bool = False
     cut: bool = False
 
 

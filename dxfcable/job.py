@@ -102,9 +102,6 @@ def revise_pieces(
     from dxfcable.revising import HOLD_CUT, revise
 
     work = Work(data, options)
-    if work.records and options.units is None:  # the drawing's own header may have lost it
-        unit = next(iter(work.records.values())).length_unit
-        work = Work(data, replace(options, units=unit))
     wanted = revision_of(revision)
     layout = work.layout_with_new_loads()
     try:

@@ -6,9 +6,11 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from dxfcable.built import Standing
+from dxfcable.errors import LayoutError
 from dxfcable.model import Finding, Severity
+from dxfcable.past import as_formed, hangers_of
 from dxfcable.recorded import CUT
-from dxfcable.recorded_loads import gone, with_recorded
+from dxfcable.recorded_loads import gone, listing, with_recorded
 from dxfcable.revising import discarded
 
 if TYPE_CHECKING:
@@ -16,6 +18,7 @@ if TYPE_CHECKING:
 
     from dxfcable.model import Layout
     from dxfcable.recorded import CableRecord
+    from dxfcable.settings import Settings
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -27,7 +30,7 @@ class Held:
 
 
 def with_cut_cables(
-    layout: Layout, records: Mapping[str, CableRecord], *, is_reformed: bool
+    layout: Layout, records: Mapping[str, CableRecord], settings: Settings, *, is_reformed: bool
 ) -> Held:
     """Let cut cables stand as recorded, unless they are to be formed anew.
 
@@ -43,7 +46,8 @@ def with_cut_cables(
     drawn = {cable.mark: cable for cable in layout.cables}
     cut = {mark: r for mark, r in records.items() if r.status == CUT and mark in drawn}
     if is_reformed:
-        notes = tuple(discarded(drawn[mark]) for mark in cut)
+        listed = [listing(drawn[mark], r, layout.force_unit or "") for mark, r in cut.items()]
+        notes = (*(discarded(drawn[mark]) for mark in cut), *(n for n in listed if n))
         return Held(layout=replace(layout, findings=(*layout.findings, *notes)), standing={})
     merged = with_recorded(layout, cut, edits_count=False)
     notes = tuple(
@@ -56,15 +60,61 @@ def with_cut_cables(
             cable=mark,
             handle=drawn[mark].origin.handle,
             line=drawn[mark].origin.line,
+            layer=drawn[mark].origin.layer or None,
+            at=drawn[mark].origin.at,
         )
         for mark, marks in merged.edited.items()
         if marks
     )
     whole = merged.layout
+    try:
+        start = as_formed(whole, cut, settings)
+    except LayoutError:  # its own solve says why
+        start = {}
     return Held(
         layout=replace(whole, findings=(*whole.findings, *notes)),
-        standing={mark: Standing(record=r, delta_t=r.delta_t) for mark, r in cut.items()},
+        standing={
+            mark: Standing(
+                record=record,
+                delta_t=record.delta_t,
+                hangers=hangers_of(start.get(mark)),
+                formed_pull=start[mark].horizontal if mark in start else None,
+            )
+            for mark, record in cut.items()
+        },
     )
+
+
+def dropped_tables(layout: Layout, records: Mapping[str, CableRecord]) -> tuple[Finding, ...]:
+    """Say of formed cables which values of an earlier load table the drawing overrules again."""
+    notes = []
+    for cable in layout.cables:
+        record = records.get(cable.mark)
+        if record is None or record.status == CUT:
+            continue
+        merged = with_recorded(layout, {cable.mark: record}, edits_count=True).layout
+        kept = next(c for c in merged.cables if c.mark == cable.mark)
+        marks = [
+            after.mark
+            for now, after in zip(cable.loads, kept.loads, strict=True)
+            if after.source == "csv" and after.cases != now.cases
+        ]
+        if marks:
+            text = f"cable {cable.mark}: values of an earlier load table are not used at"
+            notes.append(
+                Finding(
+                    code="table-dropped",
+                    severity=Severity.NOTE,
+                    text=f"{text} {', '.join(marks)}; the drawing's are",
+                    remedy="Give --loads again, or revise --hold rule, which keeps them.",
+                    cable=cable.mark,
+                    handle=cable.origin.handle,
+                    line=cable.origin.line,
+                    layer=cable.origin.layer or None,
+                    at=cable.origin.at,
+                )
+            )
+    return tuple(notes)
 
 
 def with_new_loads(layout: Layout, records: Mapping[str, CableRecord]) -> Layout:

@@ -9,11 +9,17 @@ from dxfcable.model import Movement, PointChange
 from dxfcable.units import convert, is_imperial
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
+
     from dxfcable.model import Cable, FormedCable, Node
 
 
 def movements(
-    cable: Cable, before: FormedCable, after: FormedCable, as_formed: FormedCable
+    cable: Cable,
+    before: FormedCable,
+    after: FormedCable,
+    as_formed: FormedCable,
+    places: Sequence[int | None],
 ) -> tuple[Movement, ...]:
     """Compare the nodes of one cable.
 
@@ -25,13 +31,15 @@ def movements(
         As the drawing handed in shows it, and as it stands now.
     as_formed : FormedCable
         As it was formed.
+    places : sequence of int or None
+        For each load point its place among those of before, None for one that is new.
 
     Returns
     -------
     tuple of Movement
         Supports and load points that both have, left to right.
     """
-    earlier, first = _by_place(before, after), _by_place(as_formed, after)
+    earlier, first = _by_place(before, places), _by_place(as_formed, places)
     feet = [None, *(load.x for load in cable.loads), None]
     result = []
     for k, node in enumerate(after.nodes):
@@ -76,14 +84,12 @@ def least_shown(length_unit: str) -> float:
     return 0.5 * (last if is_imperial(length_unit) else convert(1.0, "mm", length_unit))
 
 
-def _by_place(past: FormedCable, now: FormedCable) -> dict[int, tuple[int, Node]]:
-    """Pair nodes: in order where the marks agree, else ends with ends and points by mark."""
-    if [n.mark for n in past.nodes] == [n.mark for n in now.nodes]:
-        return {k: (k, node) for k, node in enumerate(past.nodes)}
-    known = {n.mark: (k, n) for k, n in enumerate(past.nodes) if not n.is_support}
-    pairs = {k: known[n.mark] for k, n in enumerate(now.nodes) if n.mark in known}
+def _by_place(past: FormedCable, places: Sequence[int | None]) -> dict[int, tuple[int, Node]]:
+    """Pair nodes with those of the past: ends with ends, points as they are paired."""
     last = len(past.nodes) - 1
-    return {**pairs, 0: (0, past.nodes[0]), len(now.nodes) - 1: (last, past.nodes[last])}
+    pairs = {0: 0, len(places) + 1: last}
+    pairs |= {k: j + 1 for k, j in enumerate(places, start=1) if j is not None}
+    return {k: (j, past.nodes[j]) for k, j in pairs.items()}
 
 
 def _tension_at(formed: FormedCable, node: int) -> float:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 from dxfcable.built import Standing
 from dxfcable.governing import Forming
 from dxfcable.model import Layout, LoadPoint, LoadSymbol
+from dxfcable.recorded_loads import partners
 from dxfcable.solving import solve
 
 if TYPE_CHECKING:
@@ -28,7 +29,7 @@ def as_issued(
     layout : Layout
         As drawn now; it gives what no load change moves, such as decks.
     records : mapping of str to CableRecord
-        By mark; all cables of the layout have one.
+        By mark; cables without one are left out.
 
     Returns
     -------
@@ -41,6 +42,11 @@ def as_issued(
         Where a recorded cable has no shape.
     """
     return _solved(layout, records, settings, was_formed=False)
+
+
+def hangers_of(formed: FormedCable | None) -> tuple[float | None, ...]:
+    """Return the lengths of a cable's hangers as formed, none where that is not known."""
+    return () if formed is None else tuple(n.hanger for n in formed.nodes if not n.is_support)
 
 
 def as_formed(
@@ -56,7 +62,9 @@ def _solved(
     places: dict[int, tuple[float, float]] = {}
     cables = []
     for cable in layout.cables:
-        record = records[cable.mark]
+        record = records.get(cable.mark)
+        if record is None:
+            continue
         ends = (cable.supports[0], cable.supports[-1])
         for support, kept in zip(ends, record.supports, strict=False):
             places[support.key] = kept.formed if was_formed else (kept.x, kept.y)
@@ -94,11 +102,11 @@ def _cable(cable: Cable, record: CableRecord, *, was_formed: bool) -> Cable:
         for name, kept in record.support_loads
         if name in marks
     )
-    if loads and len(loads) == len(cable.loads):  # hangers go by how the points are drawn
-        loads = tuple(
-            replace(now, x=kept.x, cases=kept.cases)
-            for now, kept in zip(cable.loads, loads, strict=True)
-        )
+    places = partners([(p.mark, p.x) for p in loads], [(p.mark, p.x) for p in cable.loads])
+    loads = tuple(  # hangers go by how the points are drawn
+        load if k is None else replace(cable.loads[k], x=load.x, cases=load.cases)
+        for load, k in zip(loads, places, strict=True)
+    )
     return replace(
         cable,
         loads=loads,
@@ -135,7 +143,7 @@ def _members(
     masts, stays = list(layout.masts), list(layout.stays)
     for cable in layout.cables:
         keys = {s.mark: s.key for s in cable.supports}
-        for head in records[cable.mark].heads:
+        for head in records[cable.mark].heads if cable.mark in records else ():
             key = keys.get(head.support)
             masts = [replace(m, foot=head.mast_foot) if m.support == key else m for m in masts]
             own = [k for k, stay in enumerate(stays) if stay.support == key]

@@ -6,7 +6,7 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from dxfcable.errors import DxfcableError, LayoutError
-from dxfcable.model import Finding, Layout, Rule, RuleKind, Severity, Solution
+from dxfcable.model import Cable, Finding, Layout, Rule, RuleKind, Severity, Solution
 from dxfcable.recorded import CUT
 
 if TYPE_CHECKING:
@@ -32,11 +32,16 @@ class Work:
         self._options = options
         self._drawing = scan(data)
         self.stripping: Stripping = plan_strip(self._drawing)
+        # What the drawing keeps of its cables, by mark.
+        self.records: dict[str, CableRecord] = {r.mark: r for r in self.stripping.cables}
+        self._drawn: dict[str, Cable] = {}  # as read, for what their data blocks say
 
-    @property
-    def records(self) -> dict[str, CableRecord]:
-        """What the drawing keeps of its cables, by mark."""
-        return {record.mark: record for record in self.stripping.cables}
+    def _in_units_of(self, layout: Layout) -> Layout:
+        """Bring the records into the layout's units, and say so."""
+        from dxfcable.recorded_units import in_units_of
+
+        self.records, notes = in_units_of(layout, self.records)
+        return replace(layout, findings=(*layout.findings, *notes)) if notes else layout
 
     def layout(self, *, with_table: bool = True) -> Layout:
         """Read what the drafter drew, leaving out what is ours, with the load table if told."""
@@ -58,6 +63,7 @@ class Work:
             from dxfcable.plan_loads import apply
 
             layout = apply(layout, settings)
+        self._drawn = {cable.mark: cable for cable in layout.cables}
         return layout if self._options.loads is None or not with_table else self.with_loads(layout)
 
     def with_loads(self, layout: Layout) -> Layout:
@@ -83,7 +89,13 @@ class Work:
         """
         from dxfcable.keeping import with_new_loads
 
-        layout = with_new_loads(self.layout(with_table=False), self.records)
+        layout = self.layout(with_table=False)
+        if self.records and any(f.code == "no-units" for f in layout.findings):
+            # An old release states none: the record knows.
+            unit = next(iter(self.records.values())).length_unit
+            self._options = replace(self._options, units=unit)
+            layout = self.layout(with_table=False)
+        layout = with_new_loads(self._in_units_of(layout), self.records)
         if self._options.loads is not None:
             layout = self.with_loads(layout)
         self.refuse_unreadable(layout)
@@ -93,11 +105,24 @@ class Work:
         """Read the drawing; cables that are cut stand as recorded."""
         layout = self.layout()
         if all(record.status != CUT for record in self.records.values()):
-            return layout, {}
+            return self._without_tables(layout), {}
         from dxfcable.keeping import with_cut_cables
 
-        held = with_cut_cables(layout, self.records, is_reformed=self._options.reform)
+        layout = self._without_tables(self._in_units_of(layout))
+        held = with_cut_cables(
+            layout, self.records, self._options.settings, is_reformed=self._options.reform
+        )
         return held.layout, held.standing
+
+    def _without_tables(self, layout: Layout) -> Layout:
+        """Say which values of an earlier load table a formed cable no longer has."""
+        marked = [r for r in self.records.values() if any(load.source == "csv" for load in r.loads)]
+        if not marked or self._options.loads is not None:
+            return layout
+        from dxfcable.keeping import dropped_tables
+
+        notes = dropped_tables(layout, {record.mark: record for record in marked})
+        return replace(layout, findings=(*layout.findings, *notes))
 
     def answer(self) -> tuple[Layout, Solution, dict[str, CableRecord]]:
         """Read and solve; revisions that stand in the drawing stay in it.
@@ -189,6 +214,7 @@ class Work:
                 layout,
                 cable,
                 formed,
+                drawn=self._drawn.get(cable.mark),
                 before=before,
                 combos=solution.combos,
                 delta_t=stands_at,
@@ -253,7 +279,6 @@ class Work:
             settings=self._options.settings,
             plot_scale=self._options.plot_scale,
             held_places=memory.places,
-            held_texts={},
         )
         items, notes = [], []
         for item in painting.items:

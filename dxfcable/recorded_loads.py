@@ -16,6 +16,7 @@ if TYPE_CHECKING:
     from dxfcable.model import Cable, Layout, LoadPoint
     from dxfcable.recorded import CableRecord, Cases, RecordedLoad
 
+_SAME_PLACE = 1e-6  # of what the points span
 _SAME = 1e-9  # relative: a text read again gives the same number
 
 
@@ -75,8 +76,8 @@ def with_recorded(
 
 def gone(cable: Cable, record: CableRecord) -> tuple[str, ...]:
     """List load points of the record that are no longer drawn."""
-    drawn = [load.mark for load in cable.loads]
-    return tuple(load.mark for load in record.loads if load.mark not in drawn)
+    drawn = [id(kept) for _, kept in _paired(cable.loads, record.loads)]
+    return tuple(load.mark for load in record.loads if id(load) not in drawn)
 
 
 def same_cases(first: Cases, second: Cases) -> bool:
@@ -116,14 +117,50 @@ def _words(cases: Cases, unit: str) -> str:
     )
 
 
+def partners(
+    stations: Sequence[tuple[str, float]], kept: Sequence[tuple[str, float]]
+) -> list[int | None]:
+    """Find the recorded point of each drawn one.
+
+    Parameters
+    ----------
+    stations, kept : sequence of (str, float)
+        Mark and x of the points, left to right [length].
+
+    Returns
+    -------
+    list of int or None
+        Place among `kept`, None for a point that is new. Marks given by position change when a
+        point is added or taken out, so the station counts first, then a mark that is alone on
+        both sides, then the order, where as many are left on both sides.
+    """
+    every = [x for _, x in (*stations, *kept)]
+    reach = _SAME_PLACE * (max(every, default=0.0) - min(every, default=0.0))
+    found: list[int | None] = [None] * len(stations)
+    free = list(range(len(kept)))
+    for k, (mark, x) in enumerate(stations):
+        near = [j for j in free if abs(kept[j][1] - x) <= reach]
+        if near:
+            place = next((j for j in near if kept[j][0] == mark), near[0])
+            found[k] = place
+            free.remove(place)
+    left = [k for k, j in enumerate(found) if j is None]
+    names, old = [stations[k][0] for k in left], [kept[j][0] for j in free]
+    if len(left) == len(free) and len(set(names)) == len(names) and set(names) == set(old):
+        for k in left:
+            found[k] = next(j for j in free if kept[j][0] == stations[k][0])
+    elif len(left) == len(free):
+        for k, j in zip(left, free, strict=True):
+            found[k] = j
+    return found
+
+
 def _paired(
     loads: Sequence[LoadPoint], kept: Sequence[RecordedLoad]
 ) -> list[tuple[LoadPoint, RecordedLoad | None]]:
-    """Pair drawn and recorded points: in order where the marks agree, else by mark."""
-    if [load.mark for load in loads] == [one.mark for one in kept]:
-        return list(zip(loads, kept, strict=True))
-    known = {one.mark: one for one in kept}
-    return [(load, known.get(load.mark)) for load in loads]
+    """Pair drawn and recorded points."""
+    places = partners([(p.mark, p.x) for p in loads], [(p.mark, p.x) for p in kept])
+    return [(load, None if k is None else kept[k]) for load, k in zip(loads, places, strict=True)]
 
 
 def _merged(
@@ -133,30 +170,30 @@ def _merged(
     if kept is None:
         changed.append(load.mark)
         return load
-    stated = load.cases
-    if not same_cases(load.cases, kept.drawn):
-        changed.append(load.mark)
+    stated = load.cases if load.drawn_cases is None else load.drawn_cases
+    is_edited = not same_cases(stated, kept.drawn)
+    if is_edited or not (edits_count or same_cases(load.cases, kept.cases)):
+        if is_edited or load.source == "csv":
+            changed.append(load.mark)
         if edits_count:
             return load
-        stated = kept.drawn  # so that the next revision still sees the edit
-    if same_cases(load.cases, kept.cases):
+    if same_cases(load.cases, kept.cases) and not is_edited:
         return load
     return replace(
         load,
         cases=kept.cases,
         source=kept.source,
-        drawn=_drawn(load) if load.cases else "",
-        drawn_cases=stated,
+        drawn="" if same_cases(stated, kept.cases) or not stated else _drawn(load, stated),
+        # So that the next revision still sees an edit.
+        drawn_cases=None if kept.drawn == kept.cases else kept.drawn,
     )
 
 
-def _drawn(load: LoadPoint) -> str:
+def _drawn(load: LoadPoint, stated: Cases) -> str:
     """Give the drafter's words for a value."""
     raw = load.value_origin.raw if load.value_origin else ""
-    return (
-        raw
-        if raw and not set(raw) & set("\\{}\n")
-        else " ".join(
-            f"{value:g}" if case == "load" else f"{case}={value:g}" for case, value in load.cases
-        )
+    if raw and not set(raw) & set("\\{}\n"):
+        return raw
+    return " ".join(
+        f"{value:g}" if case == "load" else f"{case}={value:g}" for case, value in stated
     )

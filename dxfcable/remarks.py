@@ -54,3 +54,12 @@ class Remarks:
                 raw=raw,
             )
         )
+
+
+def say_inextensible(remarks: Remarks) -> None:
+    """Say that a cut cable without EA is taken as inextensible: an engineer must see that."""
+    remarks.say(
+        "cut-inextensible",
+        f"{remarks.name} keeps its cut length and states no EA: it runs as inextensible",
+        Severity.WARNING,
+    )

@@ -10,9 +10,9 @@ from dxfcable.errors import LayoutError
 from dxfcable.governing import Forming
 from dxfcable.model import CableRevisions, Finding, Revised, RevisionRow, Severity
 from dxfcable.movements import changes_of, least_shown, movements
-from dxfcable.past import as_formed, as_issued
+from dxfcable.past import as_formed, as_issued, hangers_of
 from dxfcable.recorded import CUT
-from dxfcable.recorded_loads import listing, same_cases
+from dxfcable.recorded_loads import listing, partners, same_cases
 from dxfcable.solving import solve
 
 if TYPE_CHECKING:
@@ -84,6 +84,7 @@ def revise(
         Where a cable has no record, or cannot be solved.
     """
     _refuse_unrecorded(layout, records)
+    issued = records
     before = as_issued(layout, records, settings)
     start = as_formed(layout, records, settings)
     findings: list[Finding] = []
@@ -92,18 +93,28 @@ def revise(
         if revision.move_clamps:
             records = _clamps_moved(layout, records, before, findings)
         standing = {
-            mark: Standing(record=record, delta_t=revision.delta_t)
+            mark: Standing(
+                record=record,
+                delta_t=revision.delta_t,
+                is_revised=True,
+                hangers=hangers_of(start.get(mark)),
+                formed_pull=start[mark].horizontal if mark in start else None,
+            )
             for mark, record in records.items()
         }
         findings += _temperature_notes(layout, records, revision)
     else:
         layout = _to_form(layout, records, findings)
     texts = combos or tuple(dict.fromkeys(c for r in records.values() for c in r.combos))
-    solution = solve(layout, Forming(combos=texts), settings, standing)
+    forming = Forming(combos=texts, combos_are_recorded=not combos)
+    solution = solve(layout, forming, settings, standing)
     revised, revisions = [], []
     for cable, after in zip(layout.cables, solution.cables, strict=True):
         record, old = records[cable.mark], before[cable.mark]
-        moved = movements(cable, old, after, start[cable.mark])
+        places = partners(
+            [(p.mark, p.x) for p in cable.loads], [(p.mark, p.x) for p in issued[cable.mark].loads]
+        )
+        moved = movements(cable, old, after, start[cable.mark], places)
         revised.append(Revised(cable=cable.mark, held=revision.hold, before=old, movement=moved))
         note = listing(cable, record, layout.force_unit or "")
         findings += [note] if note else []
@@ -242,6 +253,8 @@ def discarded(cable: Cable) -> Finding:
         cable=cable.mark,
         handle=cable.origin.handle,
         line=cable.origin.line,
+        layer=cable.origin.layer or None,
+        at=cable.origin.at,
     )
 
 

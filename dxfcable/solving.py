@@ -35,7 +35,7 @@ from dxfcable.model import (
 )
 from dxfcable.quantities import format_force
 from dxfcable.recorded import CUT, FORMED
-from dxfcable.remarks import Remarks
+from dxfcable.remarks import Remarks, say_inextensible
 from dxfcable.statics.catenary_forming import form_catenary
 from dxfcable.statics.combinations import combine
 from dxfcable.statics.forming import form
@@ -124,7 +124,8 @@ class _Work:
             from dxfcable.standing import fitted
 
             refuse_later_work(cable, remarks)
-            self._cables[number] = fitted(cable, standing.record, remarks)
+            self._cables[number] = fitted(cable, standing, remarks)
+            self._say_unused(cable, remarks)
             self.notes += remarks.findings
             return
         combination = combination_for(cable, self._forming, self._settings, remarks)
@@ -141,6 +142,17 @@ class _Work:
                 delta_t=cable.delta_t or 0.0,
             )
 
+    def _say_unused(self, cable: Cable, remarks: Remarks) -> None:
+        """Say what the command line asks in vain of a cable that is cut."""
+        forming = self._forming
+        if forming.rule is not None and forming.cable in (None, cable.mark):
+            name = forming.rule.text or forming.rule.kind.name
+            text = f"{remarks.name} is cut: {forming.rule.kind.name} {name} of the command line"
+            remarks.say("rule-unused", f"{text} is not used; --reform forms it anew")
+        if forming.under is not None:
+            text = f'{remarks.name} is cut: --under "{forming.under}" is not used'
+            remarks.say("under-unused", f"{text}; --reform forms it anew")
+
     def stand(self) -> None:
         """Find how the cables that are cut stand."""
         numbers = [k for k, c in enumerate(self._cables) if c.mark in self._standing]
@@ -148,7 +160,7 @@ class _Work:
             return
         from dxfcable.standing import stand
 
-        self._heads = recorded_heads(self._layout, self._standing)
+        self._heads = recorded_heads(self._layout, self._standing, self.notes)
         pairs = [(self._cables[k], self._standing[self._cables[k].mark]) for k in numbers]
         stood, self._moved = stand(self._layout, pairs, self._heads, self._settings, self.notes)
         for number, one in zip(numbers, stood, strict=False):
@@ -172,21 +184,25 @@ class _Work:
             return
         known = {key for key, _ in self._heads}
         fresh = [a for a in self._anchorages if a.support not in known]
-        self._heads += giving_heads(self._layout, fresh, self.notes)
+        cut = {s.key for c in self._cables if c.mark in self._standing for s in c.supports} - known
+        self._heads += giving_heads(self._layout, fresh, cut, self.notes)
         self._say_rigid({key for key, _ in self._heads})
 
     def _say_rigid(self, giving: set[int]) -> None:
-        """Say of each cable with stays whether its supports give."""
+        """Say of each cable with stays which of its supports do not give."""
         for number, cable in enumerate(self._cables):
             keys = {s.key for s in cable.supports}
-            stayed = keys & {stay.support for stay in self._layout.stays}
             if keys & giving:
                 formed = self._formed[number]
                 self._formed[number] = replace(formed, supports_rigid=False)
-            elif stayed:
-                remarks = Remarks(cable)
-                remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid")
-                self.notes += remarks.findings
+            stayed = keys & {stay.support for stay in self._layout.stays}
+            if not stayed - giving:
+                continue
+            held = [s.mark for s in cable.supports if s.key not in giving]
+            remarks = Remarks(cable)
+            which = f" ({', '.join(held)})" if keys & giving else ""
+            remarks.say("supports-rigid", f"cable {cable.mark}: supports held rigid{which}")
+            self.notes += remarks.findings
 
     def checked(self) -> Solution:
         """Check every combination asked for."""
@@ -199,6 +215,15 @@ class _Work:
 
             built = [self._built[k] for k in order]
             asked, faults = combinations_asked(built, formed, texts, self._settings)
+            if self._forming.combos_are_recorded:
+                faults = [
+                    replace(
+                        f,
+                        severity=Severity.NOTE,
+                        text=f"a combination of the record is not checked any more: {f.text}",
+                    )
+                    for f in faults
+                ]
             self.notes += faults
             self.refuse_if_stopped()
             found = check(self._layout, built, formed, asked, self._heads, self._settings)
@@ -263,6 +288,8 @@ def _form(
         remarks.stop("rule", text, origin=rule.origin, raw=rule.text)
         return None
     _remark(cable, shape, settings, remarks)
+    if forming.cut and cable.ea is None:
+        say_inextensible(remarks)
     status = CUT if forming.cut else FORMED
     formed = gather(layout, cable, rule, combination, shape, settings, remarks, status=status)
     return shape, formed

@@ -12,8 +12,9 @@ from dxfcable.checking import moved_heads
 from dxfcable.gathering import gather
 from dxfcable.model import Severity
 from dxfcable.recorded import CUT
-from dxfcable.remarks import Remarks
+from dxfcable.remarks import Remarks, say_inextensible
 from dxfcable.responding import respond
+from dxfcable.state_remarks import say_pull, say_shape
 from dxfcable.statics.combinations import CombinationError, parse
 
 if TYPE_CHECKING:
@@ -21,7 +22,7 @@ if TYPE_CHECKING:
 
     from dxfcable.anchorages import MovedHead
     from dxfcable.built import Standing
-    from dxfcable.model import Cable, Finding, FormedCable, Layout
+    from dxfcable.model import Cable, Finding, FormedCable, Layout, Node
     from dxfcable.recorded import CableRecord, RecordedHead
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
@@ -38,54 +39,127 @@ class Stood:
     built: Built
 
 
-def fitted(cable: Cable, record: CableRecord, remarks: Remarks) -> Cable:
+def fitted(cable: Cable, standing: Standing, remarks: Remarks) -> Cable:
     """Give a cable what only its record knows, and say where drawing and record differ.
 
     Parameters
     ----------
     cable : Cable
         As drawn, its loads as they are to be used.
-    record : CableRecord
-        Of the same cable.
+    standing : Standing
+        With the record of the same cable.
     remarks : Remarks
         What stops is added: load points that came, went or moved.
     """
+    record = standing.record
+    if not _points_fit(cable, record, remarks):
+        return cable
+    _say_governing(cable, record, remarks)
+    weight = _kept("WEIGHT", cable.weight or None, record.weight or None, standing, remarks)
+    ea = _kept("EA", cable.ea, record.ea, standing, remarks)
+    if record.ea is None and cable.ea is not None:
+        ea = None
+        remarks.say(
+            "cut-ea-added",
+            f"{remarks.name} states EA {cable.ea:g} now and stated none when it was cut: its "
+            "lengths were found without stretch, so the EA is not used; --reform forms it with EA",
+            Severity.WARNING,
+        )
+    return replace(
+        cable,
+        ea=ea,
+        alpha=record.alpha if cable.alpha is None else cable.alpha,
+        weight=weight or 0.0,
+        weight_case=cable.weight_case or record.weight_case,
+    )
+
+
+def _points_fit(cable: Cable, record: CableRecord, remarks: Remarks) -> bool:
+    """Stop where load points came, went or moved."""
     tolerance = _SAME_PLACE * (cable.supports[-1].x - cable.supports[0].x)
     drawn, kept = len(cable.loads), len(record.pieces) - 1
     if drawn != kept:
         remarks.stop(
             "cut-points",
-            f"cable {cable.mark} was cut with {kept} load points, and {drawn} are drawn",
-            remedy="Draw the points it was cut with, or form it anew with --reform.",
+            f"{remarks.name} was cut with {kept} load points, and {drawn} are drawn",
+            remedy="Draw the points it was cut with, or form it anew: solve --reform, or revise "
+            "--hold rule.",
         )
-        return cable
+        return False
     for load, before in zip(cable.loads, record.loads, strict=True):
         if abs(load.x - before.x) > tolerance:
             remarks.stop(
                 "clamp-moved",
-                f"cable {cable.mark}: load point {load.mark} is drawn at x {load.x:.6g} and was at "
+                f"{remarks.name}: load point {load.mark} is drawn at x {load.x:.6g} and was at "
                 f"{before.x:.6g} when the cable was cut; a clamp stays where it is on the cable",
-                remedy="Move it back, or give --move-clamps.",
+                remedy="Move it back, or give revise --hold cut-length --move-clamps.",
                 origin=load.origin,
             )
-    for name, now, kept_value in (
-        ("EA", cable.ea, record.ea),
-        ("WEIGHT", cable.weight or None, record.weight or None),
-        ("ALPHA", cable.alpha, record.alpha),
-    ):
-        if now is not None and kept_value is not None and now != kept_value:
-            remarks.say(
-                "cut-data-changed",
-                f"cable {cable.mark}: {name} is {now:g} in the drawing and was {kept_value:g} when "
-                "it was cut; the drawing's is used",
-            )
-    return replace(
-        cable,
-        ea=record.ea if cable.ea is None else cable.ea,
-        alpha=record.alpha if cable.alpha is None else cable.alpha,
-        weight=cable.weight or record.weight,
-        weight_case=cable.weight_case or record.weight_case,
+    return True
+
+
+def _kept(
+    name: str, now: float | None, before: float | None, standing: Standing, remarks: Remarks
+) -> float | None:
+    """Choose between what the drawing says now and what was recorded, and say it."""
+    if now == before or (name == "EA" and before is None):
+        return now
+    was = "not stated" if before is None else f"{before:g}"
+    said = "not stated" if now is None else f"{now:g}"
+    text = f"{remarks.name}: {name} is {said} in the drawing and was {was} when it was last solved"
+    if now is None:
+        remarks.say("cut-data-changed", f"{text}; the recorded one is used")
+        return before
+    if standing.is_revised:
+        remarks.say("cut-data-changed", f"{text}; the drawing's is used")
+        return now
+    remarks.say(
+        "cut-data-changed",
+        f"{text}; the cable is cut and stands as recorded. Give revise --hold cut-length to see "
+        "what moves, or solve --reform",
+        Severity.WARNING,
     )
+    return before
+
+
+def _say_governing(cable: Cable, record: CableRecord, remarks: Remarks) -> None:
+    """Say that rule and UNDER of a drawing do not govern a cable that is cut."""
+    rule, under = record.stated_rule or record.rule, record.stated_under or record.under
+    drawn = cable.rule
+    if drawn is not None and (drawn.kind, drawn.value, drawn.point) != (
+        rule.kind,
+        rule.value,
+        rule.point,
+    ):
+        remarks.say(
+            "rule-unused",
+            f"{remarks.name} is cut: {drawn.text or drawn.kind.name} of the drawing does not "
+            "govern it any more; --reform forms it anew",
+        )
+    if cable.under is not None and cable.under != under:
+        remarks.say(
+            "under-unused",
+            f'{remarks.name} is cut: it was formed under "{record.under}", not "{cable.under}"; '
+            "--reform forms it anew",
+        )
+
+
+def say_supports_moved(cable: Cable, standing: Standing, remarks: Remarks) -> None:
+    """Say that supports stand elsewhere than when the drawing was issued."""
+    reach = _SAME_PLACE * (cable.supports[-1].x - cable.supports[0].x)
+    ends = (cable.supports[0], cable.supports[-1])
+    moved = [
+        f"{s.mark} by ({s.x - k.x:+.6g}, {s.y - k.y:+.6g})"
+        for s, k in zip(ends, standing.record.supports, strict=False)
+        if max(abs(s.x - k.x), abs(s.y - k.y)) > reach
+    ]
+    if moved:
+        remarks.say(
+            "supports-moved",
+            f"{remarks.name}: supports were moved since it was issued and are solved as moved: "
+            f"{', '.join(moved)}",
+            Severity.NOTE if standing.is_revised else Severity.WARNING,
+        )
 
 
 def stand(
@@ -133,7 +207,8 @@ def stand(
             remarks.stop("no-shape", text)
         else:
             shape = response.state(0)
-            _say_inextensible(cable, remarks)
+            if cable.ea is None:
+                say_inextensible(remarks)
             formed = gather(
                 layout,
                 cable,
@@ -144,11 +219,28 @@ def stand(
                 remarks,
                 status=CUT,
             )
-            formed = replace(formed, delta_t=standing.delta_t)
+            formed = replace(
+                formed, delta_t=standing.delta_t, nodes=_with_hangers(formed, standing)
+            )
+            say_shape(formed, cable, shape, remarks)
+            say_supports_moved(cable, standing, remarks)
+            say_pull(formed, standing.formed_pull, settings, remarks)
             own = replace(built[number], shape=shape)
             result.append(Stood(formed=formed, combination=combination, built=own))
         findings += remarks.findings
     return result, moved_heads(states, 0)
+
+
+def _with_hangers(formed: FormedCable, standing: Standing) -> tuple[Node, ...]:
+    """Let hangers keep their lengths: the deck moves with them."""
+    inner = formed.nodes[1:-1]
+    if len(standing.hangers) != len(inner):
+        return formed.nodes
+    kept = [
+        node if length is None else replace(node, hanger=length, hanger_foot=node.y - length)
+        for node, length in zip(inner, standing.hangers, strict=True)
+    ]
+    return formed.nodes[0], *kept, formed.nodes[-1]
 
 
 def _combination(
@@ -167,13 +259,3 @@ def _combination(
         remarks.stop("combination", text, remedy="Give its loads the cases it was formed under.")
         findings += remarks.findings
         return None
-
-
-def _say_inextensible(cable: Cable, remarks: Remarks) -> None:
-    """Say that a cut cable without EA is taken as inextensible: an engineer must see that."""
-    if cable.ea is None:
-        remarks.say(
-            "cut-inextensible",
-            f"cable {cable.mark} keeps its cut length and states no EA: it runs as inextensible",
-            Severity.WARNING,
-        )

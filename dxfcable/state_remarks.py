@@ -12,7 +12,8 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from dxfcable.built import Built
-    from dxfcable.model import Cable, FormedCable, Layout, State
+    from dxfcable.curves import Shape
+    from dxfcable.model import Cable, FormedCable, Layout, Node, State
     from dxfcable.remarks import Remarks
     from dxfcable.settings import Settings
     from dxfcable.statics.combinations import Combination
@@ -74,6 +75,56 @@ def _under(combos: Sequence[str]) -> str:
     if len(combos) <= _SHOWN:
         return f"under {', '.join(combos)}"
     return f"under {', '.join(combos[:_SHOWN])} and {len(combos) - _SHOWN} more"
+
+
+def say_shape(formed: FormedCable, cable: Cable, shape: Shape, remarks: Remarks) -> None:
+    """Say of a cable as it stands which hangers are slack and what is bowed up."""
+    slack = slack_hangers(formed.nodes, cable)
+    if slack:
+        text = f"{remarks.name}: hangers {', '.join(slack)} are slack under {formed.under}"
+        remarks.say("slack-hanger", text, _SEE)
+    if shape.has_uplift:
+        marks = ", ".join(cable.loads[k - 1].mark for k in shape.above_string)
+        remarks.say(
+            "above-string",
+            f"{remarks.name}: uplift holds {marks} above the closing string under {formed.under}; "
+            "the cable is in tension, and this is no simple hanging shape",
+        )
+
+
+def say_pull(
+    formed: FormedCable, formed_pull: float | None, settings: Settings, remarks: Remarks
+) -> None:
+    """Say that a cable nearly hangs loose as it stands."""
+    least = settings.limits.min_pull
+    if formed_pull and (formed.horizontal or 0.0) < least * formed_pull:
+        text = f"{remarks.name}: its pull falls under {least:g} of the formed pull"
+        remarks.say("slack-cable", f"{text} under {formed.under}", _SEE)
+
+
+def say_bowed(shapes: Sequence[tuple[str, Shape]], cable: Cable, remarks: Remarks) -> None:
+    """Say which states bow the cable up."""
+    found = [
+        (combo, [cable.loads[k - 1].mark for k in shape.above_string])
+        for combo, shape in shapes
+        if shape.has_uplift
+    ]
+    if found:
+        marks = dict.fromkeys(mark for _, some in found for mark in some)
+        remarks.say(
+            "above-string",
+            f"{remarks.name}: uplift holds {', '.join(marks)} above the closing string "
+            f"{_under([combo for combo, _ in found])}; the cable is in tension",
+        )
+
+
+def slack_hangers(nodes: Sequence[Node], cable: Cable) -> tuple[str, ...]:
+    """Name the hangers whose net load is zero or up, clamped ones left out."""
+    return tuple(
+        node.mark
+        for node, load in zip(nodes[1:-1], cable.loads, strict=True)
+        if node.hanger is not None and node.load <= 0.0 and not load.clamped
+    )
 
 
 def say_idle(combos: Sequence[str], remarks: Remarks) -> None:

@@ -257,7 +257,7 @@ def cut_records() -> dict[str, CableRecord]:
 def test_a_cut_cable_stands_as_recorded_when_it_is_solved_again() -> None:
     records = cut_records()
     assert records["C1"].status == CUT
-    held = with_cut_cables(BEFORE, records, is_reformed=False)
+    held = with_cut_cables(BEFORE, records, OFFICE, is_reformed=False)
     formed = solve(held.layout, Forming(), OFFICE, held.standing).cables[0]
     assert formed.status == CUT
     assert formed.horizontal == pytest.approx(125.0)
@@ -265,7 +265,7 @@ def test_a_cut_cable_stands_as_recorded_when_it_is_solved_again() -> None:
 
 
 def test_new_loads_on_a_cut_cable_must_be_seen_and_do_not_count_in_a_plain_solve() -> None:
-    held = with_cut_cables(HEAVY, cut_records(), is_reformed=False)
+    held = with_cut_cables(HEAVY, cut_records(), OFFICE, is_reformed=False)
     warning = [f for f in held.layout.findings if f.code == "cut-loads-changed"]
     assert warning[0].severity is Severity.WARNING
     assert "revise" in warning[0].remedy
@@ -278,7 +278,7 @@ def test_new_loads_on_a_cut_cable_must_be_seen_and_do_not_count_in_a_plain_solve
 
 
 def test_reforming_says_which_cable_it_discards() -> None:
-    held = with_cut_cables(HEAVY, cut_records(), is_reformed=True)
+    held = with_cut_cables(HEAVY, cut_records(), OFFICE, is_reformed=True)
     assert any(f.code == "cut-discarded" and f.cable == "C1" for f in held.layout.findings)
     assert held.standing == {}
 
