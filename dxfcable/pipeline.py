@@ -161,6 +161,7 @@ class Work:
         """
         from dxfcable.asking import Outcome
         from dxfcable.drawing.issue import issue
+        from dxfcable.drawing.strangers import strangers
         from dxfcable.units import convert
 
         base, memory = self.base(), self.memory()
@@ -178,6 +179,7 @@ class Work:
         )
         findings = (
             *self.stripping.findings,
+            *strangers(base, self._options.settings),
             *layout.findings,
             *solution.findings,
             *painting.findings,
