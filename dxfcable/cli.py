@@ -6,12 +6,15 @@ import gc
 import os
 import sys
 from pathlib import Path
-from typing import Annotated
+from typing import TYPE_CHECKING, Annotated
 
 import typer
 
 from dxfcable import __version__
 from dxfcable.commands.plain import PlainCommand, PlainGroup
+
+if TYPE_CHECKING:
+    from dxfcable.errors import DxfcableError
 
 app = typer.Typer(
     name="dxfcable",
@@ -405,6 +408,16 @@ def verify(
     raise typer.Exit(verify_all(drawings, asked))
 
 
+def _refuse_in_json(error: DxfcableError) -> None:
+    """Write the document of a refusal, where one was asked for."""
+    if "--json" in sys.argv:
+        import json
+
+        from dxfcable.report import error_finding, refused
+
+        typer.echo(json.dumps(refused("", [error_finding(error)]), indent=1))
+
+
 def main() -> None:
     """Run the command line; a fault of our own shows its traceback and exits 3."""
     from dxfcable.errors import DxfcableError
@@ -415,17 +428,23 @@ def main() -> None:
     # Nothing here is large enough to be shared out; threads cost time and memory at start.
     os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     try:
-        app()
+        sys.exit(app(standalone_mode=False) or 0)
     except DxfcableError as error:
-        from dxfcable.report import error_finding, refused, sentence
+        from dxfcable.report import error_finding, sentence
 
-        if "--json" in sys.argv:
-            import json
-
-            typer.echo(json.dumps(refused("", [error_finding(error)]), indent=1))
+        _refuse_in_json(error)
         typer.echo(sentence(error_finding(error)), err=True)
         sys.exit(2)
-    except Exception:
+    except typer.Abort:
+        typer.echo("ended", err=True)
+        sys.exit(1)
+    except Exception as error:
+        show = getattr(error, "show", None)  # what was typed makes no command: typer says why
+        if show is not None and hasattr(error, "exit_code"):
+            show()
+            told = getattr(error, "format_message", lambda: "")() or "no command"
+            _refuse_in_json(DxfcableError(told, code="usage", remedy="See --help."))
+            sys.exit(error.exit_code)
         import traceback
 
         traceback.print_exc()

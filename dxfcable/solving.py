@@ -325,6 +325,13 @@ def _remark(cable: Cable, shape: Shape, settings: Settings, remarks: Remarks) ->
             "sag-ratio",
             f"cable {cable.mark}: sag over span is {ratio:.4f}, outside {low:g} to {high:g}",
         )
+    if cable.delta_t:
+        stated = settings.show.reference_temperature
+        remarks.say(
+            "reference-temperature",
+            f"cable {cable.mark}: formed at the reference temperature, "
+            f"{stated or 'which the settings do not state (reference_temperature)'}",
+        )
     if cable.ea is None:
         remarks.say(
             "inextensible",

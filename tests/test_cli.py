@@ -356,3 +356,17 @@ def test_a_text_edited_by_hand_is_told_at_every_solve(bridge: Path, tmp_path: Pa
     fresh = json.loads(run("solve", solved, "--in-place", "--json", "--fresh").stdout)
     assert "edited" not in {f["code"] for f in fresh["findings"]}
     assert b"SEEN BY JO" not in solved.read_bytes()
+
+
+@pytest.mark.parametrize("typed", [["solve", "--nope"], ["revise", "x.dxf"], ["unknown"]])
+def test_what_makes_no_command_is_refused_in_json_too(typed: list[str]) -> None:
+    done = subprocess.run(
+        [sys.executable, "-m", "dxfcable", *typed, "--json"],
+        capture_output=True,
+        text=True,
+        check=False,
+    )
+    assert done.returncode == 2
+    document = json.loads(done.stdout)
+    assert document["error"]["code"] == "usage"
+    assert document["error"]["text"] in done.stderr

@@ -11,13 +11,15 @@ from hypothesis import strategies as st
 
 from dxfcable.errors import LayoutError
 from dxfcable.keeping import with_cut_cables, with_new_loads
-from dxfcable.model import Finding, Severity
+from dxfcable.model import Finding, Rule, RuleKind, Severity
 from dxfcable.recorded import CUT
+from dxfcable.recorded_loads import partners
+from dxfcable.recorded_units import in_units_of
 from dxfcable.recording import record_of
 from dxfcable.revising import HOLD_CUT, HOLD_RULE, Revision, revise
 from dxfcable.settings import Settings
 from dxfcable.solving import Forming, solve
-from tests.crossing import MIDDLE, crossing, layout, loads
+from tests.crossing import EA, MIDDLE, crossing, layout, loads
 
 if TYPE_CHECKING:
     from dxfcable.model import Layout, LoadPoint
@@ -99,8 +101,6 @@ def test_the_two_questions_have_two_answers() -> None:
 
 def test_a_pull_that_is_held_lets_the_middle_down_by_half() -> None:
     # OWN: all loads from 10 to 15 at 125 kip: the middle goes from 12 to 18 ft.
-    from dxfcable.model import Rule, RuleKind
-
     pulled = replace(crossing(), rule=Rule(kind=RuleKind.PULL, value=125.0))
     heavy = replace(crossing(loads(15.0)), rule=Rule(kind=RuleKind.PULL, value=125.0))
     found = answer(layout(heavy), issued(layout(pulled)), RULE).solution
@@ -293,3 +293,106 @@ def test_a_hanger_leans_with_its_clamp_and_tells_what_would_hold_the_deck() -> N
     assert third.lean_deg is not None
     assert 0.0 < third.lean_deg < 2.0
     assert moved[0].lean_deg is None
+
+
+def codes_of(found: Answer) -> dict[str, Severity]:
+    return {f.code: f.severity for f in found.solution.findings}
+
+
+def test_a_record_in_another_unit_of_force_is_converted_once() -> None:
+    in_pounds = replace(
+        layout(
+            crossing(tuple(replace(p, cases=(("D", 10_000.0),)) for p in loads()), ea=EA * 1000.0)
+        ),
+        force_unit="lb",
+    )
+    records, notes = in_units_of(in_pounds, issued(BEFORE))
+    assert [note.code for note in notes] == ["record-converted"]
+    found = answer(in_pounds, records, CUT_LENGTH).solution
+    assert found.cables[0].horizontal == pytest.approx(125_000.0)
+    assert all(m.dy == pytest.approx(0.0, abs=1e-8) for m in found.revised[0].movement)
+
+
+def test_a_record_in_another_unit_of_length_stops() -> None:
+    metres = replace(BEFORE, length_unit="m")
+    with pytest.raises(LayoutError, match="was solved in ft"):
+        in_units_of(metres, issued(BEFORE))
+
+
+def test_points_are_known_again_by_where_they_stand_when_marks_were_counted_anew() -> None:
+    # A point added at the left shifts the marks that were given by position.
+    before = [("P1", 8.0), ("P2", 16.0), ("P3", 24.0)]
+    assert partners([("P1", 4.0), ("P2", 8.0), ("P3", 16.0), ("P4", 24.0)], before) == [
+        None,
+        0,
+        1,
+        2,
+    ]
+    assert partners([("P1", 16.0), ("P2", 24.0)], before) == [1, 2]
+    assert partners([("P1", 8.0), ("P2", 17.0), ("P3", 24.0)], before) == [0, 1, 2]
+    assert partners([("B", 8.0), ("A", 30.0)], [("A", 8.0), ("B", 20.0)]) == [0, 1]
+
+
+def test_what_stands_after_a_change_is_looked_at_too() -> None:
+    up = answer(layout(crossing(loads(-10.0))), issued(BEFORE), CUT_LENGTH)
+    assert codes_of(up)["slack-hanger"] is Severity.WARNING
+    assert codes_of(up)["above-string"] is Severity.NOTE
+    light = answer(layout(crossing(loads(0.1))), issued(BEFORE), CUT_LENGTH)
+    assert codes_of(light)["slack-cable"] is Severity.WARNING
+
+
+def test_a_stiffness_that_comes_after_the_cut_is_not_used() -> None:
+    bare = issued(layout(crossing(ea=None)), Forming(cut=True))
+    held = with_cut_cables(BEFORE, bare, OFFICE, is_reformed=False)
+    solution = solve(held.layout, Forming(), OFFICE, held.standing)
+    assert solution.cables[0].ea is None
+    assert solution.cables[0].horizontal == pytest.approx(125.0)
+    warned = {f.code for f in solution.findings if f.severity is Severity.WARNING}
+    assert "cut-ea-added" in warned
+
+
+def test_stays_that_were_rigid_when_the_cable_was_cut_stay_so() -> None:
+    stayed = layout(crossing(), is_stayed=True)
+    rigid = replace(stayed, stays=tuple(replace(s, anchor=None) for s in stayed.stays))
+    heavy = layout(crossing(loads(15.0)), is_stayed=True)
+    found = answer(heavy, issued(rigid), CUT_LENGTH).solution
+    assert found.cables[0].supports_rigid
+    assert found.cables[0].horizontal == pytest.approx(180.955, abs=1e-3)
+    assert sum(f.code == "supports-rigid" for f in found.findings) >= 2
+
+
+def test_a_stay_made_stiffer_since_is_used_and_told() -> None:
+    stayed = layout(crossing(), is_stayed=True)
+    anchors = [replace(s, anchor=replace(s.anchor, ea=2 * EA)) for s in stayed.stays if s.anchor]
+    found = answer(replace(stayed, stays=tuple(anchors)), issued(stayed), CUT_LENGTH)
+    assert "stay-changed" in codes_of(found)
+
+
+def test_rules_and_combinations_that_do_not_govern_a_cut_cable_are_told() -> None:
+    records = issued(BEFORE, Forming(cut=True))
+    other = layout(crossing(rule=Rule(kind=RuleKind.SAG, value=13.0, text="SAG 13"), under="1.0D"))
+    held = with_cut_cables(other, records, OFFICE, is_reformed=False)
+    asked = Forming(rule=Rule(kind=RuleKind.PULL, value=99.0), under="D")
+    solution = solve(held.layout, asked, OFFICE, held.standing)
+    assert solution.cables[0].horizontal == pytest.approx(125.0)
+    told = [f.code for f in solution.findings]
+    assert told.count("rule-unused") == 2
+    assert told.count("under-unused") == 2
+
+
+def test_a_recorded_combination_that_no_longer_fits_does_not_stop_a_revision() -> None:
+    both = layout(crossing(loads(10.0, 5.0)))
+    records = issued(both, Forming(combos=("D + L", "1.2D")))
+    found = answer(BEFORE, records, CUT_LENGTH)
+    assert codes_of(found)["combination"] is Severity.NOTE
+    assert [state.combo for state in found.solution.cables[0].states] == ["1.2D"]
+
+
+def test_hangers_of_a_cut_cable_keep_their_lengths() -> None:
+    deck = ((0.0, -30.0), (120.0, -30.0))
+    records = issued(layout(crossing(deck=deck)))
+    found = answer(layout(crossing(loads(15.0), deck=deck)), records, CUT_LENGTH).solution
+    for node, moved in zip(found.cables[0].nodes, found.revised[0].movement, strict=True):
+        if node.hanger is not None and node.hanger_foot is not None:
+            assert node.hanger == pytest.approx(node.y - moved.dy + 30.0)
+            assert node.hanger_foot == pytest.approx(-30.0 + moved.dy)
