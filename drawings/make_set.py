@@ -1,4 +1,4 @@
-"""Make the sheets of all demonstration drawings as one set, and a picture of its pages.
+"""Make the sheets of all demonstration drawings as one set, and a picture of some of its pages.
 
 Run as `python drawings/make_set.py` after `make_drawings.py`; needs the extra `picture`. The two
 drawings of a load change are shown as revised.
@@ -21,11 +21,13 @@ HERE = Path(__file__).resolve().parent
 RESULT = HERE / "demonstration_set.pdf"
 PICTURE = HERE / "pictures" / "demonstration_set.png"
 UNITS = {"pipe_crossing_r12.dxf": "m"}  # release 12 states no unit
-ACROSS, WIDTH, GAP = 3, 620, 12
+SHOWN = ("weir_footbridge", "canopy_roof", "gulch_pipe", "long_walkway_60")  # in the picture
+ACROSS, WIDTH, GAP = 2, 1000, 12
+GREYS = 16  # so that a page is read in outline and the picture stays small
 
 
 def main() -> None:
-    """Write the set and the picture of its pages."""
+    """Write the set and the picture of some pages."""
     if str(HERE.parent) not in sys.path:  # run as a script, only this folder is on the path
         sys.path.insert(0, str(HERE.parent))
     from drawings.load_changes import CHANGES
@@ -46,21 +48,23 @@ def main() -> None:
         if code not in (0, 1):
             sys.exit(code)
         RESULT.write_bytes((sheets / SET).read_bytes())
-    _picture()
+        _picture([sheets / f"{name}-C1.pdf" for name in SHOWN])
 
 
-def _picture() -> None:
-    """Put small pictures of all pages side by side."""
-    document = pypdfium2.PdfDocument(RESULT)
-    pages = [page.render(scale=WIDTH / page.get_width()).to_pil() for page in document]
+def _picture(files: list[Path]) -> None:
+    """Put pictures of the first pages of some sheets side by side."""
+    first = [pypdfium2.PdfDocument(file)[0] for file in files]
+    # Drawn larger than shown: thin lines and small letters become grey, not broken.
+    pages = [page.render(scale=2 * WIDTH / page.get_width()).to_pil() for page in first]
+    pages = [page.resize((WIDTH, page.height // 2), Image.Resampling.LANCZOS) for page in pages]
     high = max(page.height for page in pages)
     rows = -(-len(pages) // ACROSS)
     size = (ACROSS * (WIDTH + GAP) + GAP, rows * (high + GAP) + GAP)
-    whole = Image.new("RGB", size, (120, 120, 120))
+    whole = Image.new("L", size, 120)
     for number, page in enumerate(pages):
         row, column = divmod(number, ACROSS)
         whole.paste(page, (GAP + column * (WIDTH + GAP), GAP + row * (high + GAP)))
-    whole.save(PICTURE, "PNG", optimize=True)
+    whole.quantize(GREYS).save(PICTURE, "PNG", optimize=True)
 
 
 if __name__ == "__main__":

@@ -91,6 +91,8 @@ class CableRecord:
         Unstressed lengths, left to right [length].
     combos : tuple of str
         Combinations to check, as typed.
+    stated_rule, stated_under : Rule or None, str or None
+        What the data block said at the issue; None where it said nothing, or was not kept.
     """
 
     mark: str
@@ -113,3 +115,5 @@ class CableRecord:
     heads: tuple[RecordedHead, ...] = ()
     combos: tuple[str, ...] = ()
     revisions: CableRevisions | None = None
+    stated_rule: Rule | None = None
+    stated_under: str | None = None

@@ -23,6 +23,7 @@ def record_of(
     cable: Cable,
     formed: FormedCable,
     *,
+    drawn: Cable | None = None,
     before: CableRecord | None = None,
     combos: tuple[str, ...] = (),
     delta_t: float = 0.0,
@@ -37,6 +38,9 @@ def record_of(
         As drawn, with the loads used.
     formed : FormedCable
         With its status, and the unstressed lengths of its pieces.
+    drawn : Cable, optional
+        The cable as the drafter's drawing has it, whatever rule and combination it was given
+        since; left out, nothing is kept of what the data block said.
     before : CableRecord, optional
         The record of the drawing handed in. A cut cable was formed where and under what that
         says; leave it out where a cable is cut that was formed in this very run.
@@ -61,6 +65,7 @@ def record_of(
     old_at_supports = tuple(load for _, load in formerly.support_loads) if formerly else ()
     known_at_supports = tuple(load for _, load in before.support_loads) if before else ()
     at_supports = [load for _, load in cable.support_loads]
+    stated = drawn.rule if drawn else None
     return CableRecord(
         mark=cable.mark,
         status=formed.status,
@@ -89,6 +94,8 @@ def record_of(
         heads=heads,
         combos=combos,
         revisions=revisions,
+        stated_rule=replace(stated, origin=Origin()) if stated else None,
+        stated_under=drawn.under if drawn else None,
     )
 
 

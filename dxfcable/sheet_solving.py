@@ -61,7 +61,7 @@ def solved_for_sheets(data: bytes, options: Options) -> Outcome:
     if any(record.status == CUT for record in records.values()):
         from dxfcable.keeping import with_cut_cables
 
-        held = with_cut_cables(layout, records, is_reformed=False)
+        held = with_cut_cables(layout, records, options.settings, is_reformed=False)
         layout, standing = held.layout, dict(held.standing)
     solution = work.solution(layout, standing)
     if any(record.revisions for record in records.values()):

@@ -5,11 +5,13 @@ from __future__ import annotations
 import sys
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.painting.naming import anchor_feet
 from dxfcable.job import CAUTION
 from dxfcable.lengths import format_elevation, format_length
 from dxfcable.model import Cable, Finding, FormedCable, Layout, Rule, RuleKind, Severity
 from dxfcable.plain_output import PlainConsole, Table, is_plain, rich_console
 from dxfcable.quantities import format_force
+from dxfcable.recorded import CUT
 from dxfcable.report import sentence
 from dxfcable.terminal_states import head_words, show_changes, show_states
 from dxfcable.units import FORCE_UNITS
@@ -161,14 +163,12 @@ def _show_members(out: Out, layout: Layout, cable: Cable) -> None:
 def _summary(formed: FormedCable, layout: Layout) -> str:
     """Write the main figures in a few lines."""
     unit = layout.length_unit
-    assumed = ", assumed" if formed.level_is_assumed else ""
     weight = "weightless" if not formed.weight else "with its weight"
     stretch = "inextensible" if formed.ea is None else f"EA {_force(formed.ea, layout)}"
     governs = formed.governs
     at = f" at {governs.support}" if governs.support else ""
     lines = [
-        f"formed by {rule_words(formed.rule, layout)} under {formed.under} "
-        f"({formed.level}{assumed}); {weight}, {stretch}",
+        f"{_formed_words(formed, layout)}; {weight}, {stretch}",
         f"pull {_force(formed.horizontal or 0.0, layout)}, largest tension "
         f"{_force(formed.max_tension, layout)} in {governs.segment}{at}, "
         f"sag {format_length(formed.sag, unit)}",
@@ -180,6 +180,17 @@ def _summary(formed: FormedCable, layout: Layout) -> str:
             f"capacity {_force(formed.capacity, layout)}, utilization {formed.utilization:.3f}"
         )
     return _safe("\n".join(lines))
+
+
+def _formed_words(formed: FormedCable, layout: Layout) -> str:
+    """Say what governs the shape, under what: the rule, or of a cut cable what is held."""
+    assumed = ", assumed" if formed.level_is_assumed else ""
+    change = f", {formed.delta_t:+.6g} K" if formed.delta_t else ""
+    under = f"under {formed.under} ({formed.level}{assumed}{change})"
+    rule = rule_words(formed.rule, layout)
+    if formed.status == CUT:
+        return f"cut, its unstressed lengths held {under}; first formed by {rule}"
+    return f"formed by {rule} {under}"
 
 
 def _points_table(formed: FormedCable, layout: Layout) -> Table:
@@ -221,8 +232,8 @@ def _anchorage_words(found: Anchorage, layout: Layout) -> str:
     if found.mast is not None:
         parts.append(f"mast {_force(found.mast, layout)}")
     parts += [f"stay {_force(force, layout)}" for force in found.stays]
-    for anchor in found.anchors:
-        name = f"anchor {anchor.mark}".strip()
+    for foot, anchor in zip(anchor_feet(found), found.anchors, strict=True):
+        name = f"anchor {anchor.mark}" if anchor.mark else foot.lower()
         parts.append(
             f"{name} horizontal {_force(anchor.horizontal, layout)}, "
             f"uplift {_force(anchor.uplift, layout)}"

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.painting.naming import anchor_feet
 from dxfcable.lengths import format_elevation, format_length
 from dxfcable.plain_output import Table
 from dxfcable.quantities import format_force
@@ -16,6 +17,7 @@ if TYPE_CHECKING:
     from rich.console import Console
 
     from dxfcable.model import (
+        Anchorage,
         Clearance,
         Envelope,
         Extreme,
@@ -154,9 +156,21 @@ def _members_table(formed: FormedCable, layout: Layout, names: dict[str, str]) -
                 _safe(joint.mark),
                 "" if joint.mast is None else _force(joint.mast, layout),
                 ", ".join(_force(stay, layout) for stay in joint.stays),
-                ", ".join(_force(anchor.uplift, layout) for anchor in joint.anchors),
+                _safe(_uplifts(joint, layout)),
             )
     return table
+
+
+def _uplifts(joint: Anchorage, layout: Layout) -> str:
+    """Write the uplift of each anchor, named by mark or member where there are several."""
+    forces = [_force(anchor.uplift, layout) for anchor in joint.anchors]
+    if len(forces) < 2:
+        return ", ".join(forces)
+    names = [
+        anchor.mark or foot.lower()
+        for anchor, foot in zip(joint.anchors, anchor_feet(joint), strict=True)
+    ]
+    return ", ".join(f"{name} {force}" for name, force in zip(names, forces, strict=True))
 
 
 def _show_envelope(

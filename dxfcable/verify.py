@@ -94,8 +94,7 @@ def verify_bytes(data: bytes, options: Options) -> Proof:
         raise DxfcableError(message, code="not-issued", remedy="Solve it first: dxfcable solve.")
     records = recorded(stripping)
     layout = _layout(drawing, stripping, issued, records, options)
-    redrawn = frozenset(f.handle for f in stripping.findings if f.code == "redrawn" and f.handle)
-    cables = prove(issued, layout, records, redrawn, options.settings)
+    cables = prove(issued, layout, records, options.settings)
     notes = tuple(f for f in stripping.findings if f.code not in _TOLD)
     return Proof(cables=cables, findings=(*notes, *_findings(cables, drawing)))
 
@@ -169,6 +168,16 @@ def _findings(cables: tuple[CableProof, ...], drawing: Scan) -> tuple[Finding, .
                 cable=cable.mark,
             )
             for reason in cable.reasons
+        ]
+        found += [
+            Finding(
+                code=f"{one.what.lower()}-overruled",
+                severity=Severity.NOTE,
+                text=f"cable {cable.mark} is issued with {one.what} {one.used}, as asked for then; "
+                f"its data block states {one.stated}",
+                cable=cable.mark,
+            )
+            for one in cable.overruled
         ]
         found += [_finding(cable.mark, d, drawing) for d in cable.differences]
     return tuple(found)

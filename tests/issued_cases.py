@@ -52,6 +52,22 @@ FEET = Scenario(
 )
 PAIR = Scenario(unit="mm", el="", cables=2, data=(("PULL", "55 kN"),), has_masts=False)
 SCENARIOS = {"light": LIGHT, "heavy": HEAVY, "cases": CASES, "feet": FEET, "pair": PAIR}
+# Few entities, for everything that may be done to any of them.
+SMALL = {
+    "small": Scenario(loads=("12 kN", "15.5 kN"), has_masts=False),
+    "small feet": Scenario(
+        release="R12",
+        unit="ft",
+        span=60.0,
+        rise=-2.5,
+        el="",
+        loads=("8k", "11.5k"),
+        data=(("SAG", "6'-0\""), ("WEIGHT", "0.02 kip/ft")),
+        has_masts=False,
+        has_deck=False,
+    ),
+}
+ALL = SCENARIOS | SMALL
 
 
 def drawn(scenario: Scenario) -> bytes:
@@ -112,11 +128,12 @@ def _cable(space: object, scenario: Scenario, number: int) -> None:
 @functools.cache
 def issued(name: str) -> bytes:
     """Issue a scenario."""
-    scenario = SCENARIOS[name]
+    scenario = ALL[name]
     data, _ = solve_bytes(drawn(scenario), Options(units=scenario.unit))
     return data
 
 
+@functools.lru_cache(maxsize=16)
 def saved_by_a_library(data: bytes) -> bytes:
     """Read a drawing and write it again, as another program does."""
     text = data.decode("utf-8" if data[data.find(b"AC10") :][:6] >= b"AC1021" else "cp1252")

@@ -65,6 +65,20 @@ class IssuedFile:
             changes[at] = repr(float(self.tokens[at].value) + by).encode()
         return rewrite(self.data, changes, list(self.tokens))
 
+    def part_moved(self, part: str, dx: float, dy: float, only: str = "") -> bytes:
+        """Move all entities of a part, or one of them, as a CAD program does."""
+        wanted = b"part=%b" % part.encode()
+        changes = {}
+        for name, entity in self.ours.items():
+            own = range(entity.first, entity.stop)
+            if only not in ("", name) or not any(self.tokens[k].name == wanted for k in own):
+                continue
+            for k in own:
+                by = {1: dx, 2: dy}.get(self.tokens[k].code // 10, 0.0)
+                if by and self.tokens[k].code % 10 < 4:
+                    changes[k] = repr(float(self.tokens[k].value) + by).encode()
+        return rewrite(self.data, changes, list(self.tokens))
+
     def retexted(self, name: str, words: str) -> bytes:
         """Put other words into a text."""
         return rewrite(self.data, {self._at(name, 1, 0): words.encode()}, list(self.tokens))

@@ -51,6 +51,17 @@ def test_where_a_rule_came_from_in_the_file_is_not_kept() -> None:
     assert kept.rule == Rule(kind=RuleKind.SAG, value=2.4, text="2.4 m")
 
 
+def test_what_the_data_block_stated_is_kept_beside_what_was_used() -> None:
+    layout = sample()
+    (formed,) = solve(layout, Forming(under="D"), Settings()).cables
+    stated = Rule(kind=RuleKind.PULL, value=55.0, text="PULL 55 kN", origin=Origin(handle="A1"))
+    block = replace(layout.cables[0], rule=stated, under="D + L")
+    kept = record_of(layout, layout.cables[0], formed, drawn=block)
+    assert kept.stated_rule == replace(stated, origin=Origin())
+    assert (kept.stated_under, kept.under) == ("D + L", "D")
+    assert recorded(layout).stated_rule is None
+
+
 def test_a_load_table_is_kept_beside_what_the_drawing_says() -> None:
     layout = sample()
     text = "mark,D (kN)\nP2,30\n"

@@ -6,7 +6,7 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 import pytest
-from hypothesis import given
+from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from dxfcable.governing import Forming
@@ -55,6 +55,7 @@ def test_a_known_cable_gives_the_numbers_that_a_checker_finds() -> None:
     assert rows["T AT S1"][:2] == ("132.853 kN", "132.853 kN")
 
 
+@settings(max_examples=40)
 @given(
     st.lists(st.floats(1.0, 50.0), min_size=1, max_size=8),
     st.floats(-3.0, 3.0),

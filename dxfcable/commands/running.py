@@ -92,7 +92,7 @@ def run_over(drawings: Sequence[Path], asked: Asked, work: Callable[[Path], Done
     worst = 0
     if len(drawings) > 1:
         gc.enable()  # what one drawing leaves is not kept through all others
-    for drawing in _progress(drawings, asked):
+    for drawing in progress(drawings, asked):
         if len(drawings) > 1 and not asked.as_json:
             sys.stdout.write(f"\n{drawing}\n")
         try:
@@ -211,8 +211,20 @@ def _tell(found: Sequence[Finding]) -> None:
             sys.stderr.write(f"{words}\n")
 
 
-def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:
-    """Yield drawings, with a bar on a terminal where there are several."""
+def progress(drawings: Sequence[Path], asked: Asked, what: str = "drawings") -> Iterator[Path]:
+    """Yield drawings, with a bar on a terminal where there are several.
+
+    Parameters
+    ----------
+    drawings : sequence of Path
+    asked : Asked
+    what : str
+        Stands before the bar.
+
+    Yields
+    ------
+    Path
+    """
     if len(drawings) < 2 or asked.as_json or not sys.stderr.isatty():
         yield from drawings
         return
@@ -220,4 +232,4 @@ def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:
 
     from dxfcable.plain_output import rich_console
 
-    yield from track(drawings, "drawings", console=rich_console(sys.stderr))
+    yield from track(drawings, what, console=rich_console(sys.stderr))

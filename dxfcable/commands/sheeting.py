@@ -2,13 +2,12 @@
 
 from __future__ import annotations
 
-import sys
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
 from dxfcable import report
 from dxfcable.asking import Outcome
-from dxfcable.commands.running import Asked, Done, options, run_over, write_beside
+from dxfcable.commands.running import Asked, Done, options, progress, run_over, write_beside
 from dxfcable.drawing.sheeting.sheet import MARK
 from dxfcable.errors import DxfcableError, OutputError
 from dxfcable.files import find_settings, read_drawing
@@ -25,7 +24,7 @@ from dxfcable.sheet_set import (
 from dxfcable.sheet_solving import solved_for_sheets
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Sequence
+    from collections.abc import Sequence
     from pathlib import Path
 
     from dxfcable.sheet_making import Made
@@ -91,7 +90,7 @@ def sheets_all(drawings: Sequence[Path], asked: Asked, wanted: SheetsAsked) -> i
     # In order of their names, so that numbers do not depend on how they were typed.
     ordered = sorted(drawings, key=lambda d: (d.name.casefold(), d.name))
     results: dict[Path, _Result] = {}
-    for drawing in _progress(ordered, asked):
+    for drawing in progress(ordered, asked, "sheets"):
         results[drawing] = _result(drawing, asked, wanted, numbers, results)
     shared = _write_all(results, before, asked, wanted)
 
@@ -257,14 +256,3 @@ def _left_over(before: Sequence[IndexRow], rows: Sequence[IndexRow]) -> list[Fin
     text = f"of an earlier run, and no longer of the set: {', '.join(names)}"
     remedy = "Remove these files if they are not needed."
     return [Finding(code="sheets-left-over", severity=Severity.NOTE, text=text, remedy=remedy)]
-
-
-def _progress(drawings: Sequence[Path], asked: Asked) -> Iterator[Path]:
-    """Yield drawings, with a bar on a terminal where there are several."""
-    if len(drawings) < 2 or asked.as_json or not sys.stderr.isatty():
-        yield from drawings
-        return
-    from rich.console import Console
-    from rich.progress import track
-
-    yield from track(drawings, "sheets", console=Console(stderr=True))

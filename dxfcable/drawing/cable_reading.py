@@ -120,7 +120,7 @@ def read_cable(text: str) -> CableRecord | UnreadCable | None:
 
 def _record(lines: Lines) -> CableRecord:
     """Put a record together; ValueError where a line is not as it was written."""
-    one = {key: _groups(lines[key][0], 1)[0] for key in _ALWAYS}
+    one = {key: _one(lines, key) for key in _ALWAYS}
     mark, status = _words(one["cable"], 2)
     weight = _floats(one["weight"][:1], 1)[0]
     return CableRecord(
@@ -144,6 +144,8 @@ def _record(lines: Lines) -> CableRecord:
         heads=tuple(_head(line) for line in lines.get("head", ())),
         combos=tuple(_words(_groups(line, 1)[0], 1)[0] for line in lines.get("combo", ())),
         revisions=_revisions(lines) if "revisions" in lines else None,
+        stated_rule=_rule(_one(lines, "stated-rule")) if "stated-rule" in lines else None,
+        stated_under=_words(_one(lines, "stated-under"), 1)[0] if "stated-under" in lines else None,
     )
 
 
@@ -214,11 +216,16 @@ def _revisions(lines: Lines) -> CableRevisions:
     profiles = [_groups(line, 1)[0] for line in lines.get("old", ())]
     flat = [_floats(words, len(words)) for words in profiles]
     return CableRevisions(
-        cable=_words(_groups(lines["revisions"][0], 1)[0], 1)[0],
+        cable=_words(_one(lines, "revisions"), 1)[0],
         rows=tuple(rows),
         old=tuple(tuple(zip(xy[::2], xy[1::2], strict=True)) for xy in flat),
         changes=tuple(changes),
     )
+
+
+def _one(lines: Lines, key: str) -> Words:
+    """Read the values of a line that stands there once."""
+    return _groups(lines[key][0], 1)[0]
 
 
 def _groups(line: Line, count: int) -> Line:

@@ -15,6 +15,7 @@ from dxfcable.drawing.record import escape
 if TYPE_CHECKING:
     from collections.abc import Iterator
 
+    from dxfcable.model import Rule
     from dxfcable.recorded import CableRecord, Cases, RecordedLoad
     from dxfcable.results import CableRevisions
 
@@ -43,12 +44,14 @@ def _line(*groups: Words) -> str:
 
 
 def _lines(record: CableRecord) -> Iterator[tuple[Words, ...]]:
-    rule = record.rule
-    place = _numbers(*rule.point) if rule.point is not None else ()
     yield (("cable", escape(record.mark), escape(record.status)),)
     yield (("units", escape(record.length_unit), *_text(record.force_unit)),)
-    yield (("rule", rule.kind.value, *_numbers(rule.value), escape(rule.text), *place),)
+    yield (("rule", *_rule_words(record.rule)),)
     yield (("under", escape(record.under)),)
+    if record.stated_rule is not None:
+        yield (("stated-rule", *_rule_words(record.stated_rule)),)
+    if record.stated_under is not None:
+        yield (("stated-under", escape(record.stated_under)),)
     yield (("level", *_text(record.level)),)
     yield (("weight", *_numbers(record.weight), *_text(record.weight_case)),)
     yield (("ea", *_numbers(record.ea)),)
@@ -71,6 +74,11 @@ def _lines(record: CableRecord) -> Iterator[tuple[Words, ...]]:
         yield (("combo", escape(combo)),)
     if record.revisions is not None:
         yield from _revision_lines(record.revisions)
+
+
+def _rule_words(rule: Rule) -> Words:
+    place = _numbers(*rule.point) if rule.point is not None else ()
+    return (rule.kind.value, *_numbers(rule.value), escape(rule.text), *place)
 
 
 def _load_line(key: str, load: RecordedLoad) -> tuple[Words, ...]:

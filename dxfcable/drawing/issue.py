@@ -14,6 +14,7 @@ from dxfcable.drawing.export import Surroundings, entity
 from dxfcable.drawing.items import Item, PolylineItem, TextItem
 from dxfcable.drawing.record import FileFacts, Memory
 from dxfcable.drawing.rows import plan_rows
+from dxfcable.drawing.whole import whole_of
 from dxfcable.errors import DrawingError
 from dxfcable.model import Finding, Severity
 
@@ -102,7 +103,13 @@ def issue(
     handles = {item.id: _reserve(item, around) for item in painting.items}
     seed = _seed(drawing, allot)
     facts = FileFacts(
-        seed=seed[0] if seed else None, opened=opened, memory=memory, origins=painting.origins
+        seed=seed[0] if seed else None,
+        opened=opened,
+        memory=memory,
+        origins=painting.origins,
+        whole=whole_of(
+            {item.id: item.part for item in painting.items}, [part for part, _ in painting.origins]
+        ),
     )
     carried = _carriers(painting.items, record.facts_text(facts), cable_records)
     body = _body(drawing, entities.last, painting.items, _fixed(around, handles), carried)

@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
+from dxfcable.drawing import record
 from dxfcable.drawing.bytes.cut import encoding_of, records_on
 from dxfcable.drawing.bytes.decode import decode, layer_key, plain, unescape
 from dxfcable.drawing.dialect import APPID
@@ -22,6 +23,7 @@ if TYPE_CHECKING:
 
     from dxfcable.drawing.bytes.pairs import Pair
     from dxfcable.drawing.bytes.scan import Scan
+    from dxfcable.drawing.whole import Whole
     from dxfcable.model import Point
     from dxfcable.settings import Settings
 
@@ -52,6 +54,10 @@ class IssuedEntity:
         Has a linetype of its own; is closed; has arcs between vertices.
     was_edited : bool
         Its text is not the one that its mark names.
+    part : str
+        What it moves with, by its mark; "" without one.
+    put : Point or None
+        Where its mark says that its first point was put.
     """
 
     id: str
@@ -68,6 +74,8 @@ class IssuedEntity:
     is_closed: bool = False
     is_bent: bool = False
     was_edited: bool = False
+    part: str = ""
+    put: Point | None = None
 
     @property
     def start(self) -> Point:
@@ -96,11 +104,14 @@ class Issued:
         On our layers without a mark, in file order.
     copies : tuple of IssuedEntity
         With the mark of another entity.
+    whole : Whole or None
+        What the record that they carry says of how many there are.
     """
 
     marked: Mapping[str, IssuedEntity]
     unmarked: tuple[IssuedEntity, ...]
     copies: tuple[IssuedEntity, ...]
+    whole: Whole | None = None
 
 
 def read_issued(drawing: Scan, settings: Settings, own_heads: frozenset[int]) -> Issued:
@@ -125,16 +136,22 @@ def read_issued(drawing: Scan, settings: Settings, own_heads: frozenset[int]) ->
         names.setdefault(key, set()).add(role)
     roles = {key: frozenset(found) for key, found in names.items()}
     marked: dict[str, IssuedEntity] = {}
-    copies, unmarked = [], []
-    for record in sorted(own_heads | _records(drawing, frozenset(roles))):
-        entity = _read(drawing, record, roles)
-        if record in own_heads:
+    copies, unmarked, carried = [], [], []
+    for head in sorted(own_heads | _records(drawing, frozenset(roles))):
+        entity, record_lines = _read(drawing, head, roles)
+        if head in own_heads:
             marked[entity.id] = entity
+            carried.append(record_lines)
         elif entity.id:
             copies.append(entity)
         else:
             unmarked.append(entity)
-    return Issued(marked=marked, unmarked=tuple(unmarked), copies=tuple(copies))
+    return Issued(
+        marked=marked,
+        unmarked=tuple(unmarked),
+        copies=tuple(copies),
+        whole=record.read_facts(record.join(carried)).whole,
+    )
 
 
 def _records(drawing: Scan, layers: frozenset[str]) -> set[int]:
@@ -148,30 +165,33 @@ def _records(drawing: Scan, layers: frozenset[str]) -> set[int]:
     return {k for k in found.tolist() if drawing.first_tag(k, 67) != b"1"}
 
 
-def _read(drawing: Scan, record: int, roles: Mapping[str, frozenset[str]]) -> IssuedEntity:
-    """Read one entity's own tags, and of its mark the id and the text."""
+def _read(
+    drawing: Scan, head: int, roles: Mapping[str, frozenset[str]]
+) -> tuple[IssuedEntity, tuple[str, ...]]:
+    """Read one entity's own tags and its mark, and the part of the record that it carries."""
     encoding, _ = encoding_of(drawing)
-    everything = drawing.whole(record, "an entity on our layers")
+    everything = drawing.whole(head, "an entity on our layers")
     mark = _mark(everything, encoding)
     tags = [p for p in everything if p.code < 999]
     values: dict[int, bytes] = {}
     for pair in tags:
         values.setdefault(pair.code, pair.value.strip())
-    kind = bytes(drawing.kinds[record]).decode("latin-1")
+    kind = bytes(drawing.kinds[head]).decode("latin-1")
     raw_layer = values.get(8, b"0")
     text = plain(decode(values.get(1, b""), encoding)) if kind in ("TEXT", "MTEXT") else ""
     height = _number(values.get(40, b"0"))
-    vertices = _followers(drawing, record) if kind == "POLYLINE" else [tags]
+    vertices = _followers(drawing, head) if kind == "POLYLINE" else [tags]
     points, is_bent = _points(kind, values, vertices)
     linetype = decode(values.get(6, b""), encoding).upper()
     handle = values.get(5, b"").decode("latin-1")
-    return IssuedEntity(
-        id=mark.get("id", ""),
+    name = mark.facts.get("id", "")
+    entity = IssuedEntity(
+        id=name,
         roles=roles.get(layer_key(raw_layer, encoding), frozenset()),
         kind="LWPOLYLINE" if kind == "POLYLINE" else kind,
         layer=unescape(decode(raw_layer, encoding)),
         handle=handle or None,
-        offset=drawing.span(record)[0],
+        offset=drawing.span(head)[0],
         points=points,
         middle=_middle(values, points[0], text, height) if text else points[0],
         text=text,
@@ -179,21 +199,43 @@ def _read(drawing: Scan, record: int, roles: Mapping[str, frozenset[str]]) -> Is
         is_chain=linetype not in _PLAIN_LINES,
         is_closed=kind in ("LWPOLYLINE", "POLYLINE") and bool(_whole(values.get(70)) & 1),
         is_bent=is_bent,
-        was_edited=bool(text) and text_sum(text) != mark.get("text", text_sum(text)),
+        was_edited=bool(text) and text_sum(text) != mark.facts.get("text", text_sum(text)),
+        part=mark.facts.get("part", name),
+        put=mark.put,
     )
+    return entity, mark.record_lines
 
 
-def _mark(tags: list[Pair], encoding: str) -> dict[str, str]:
-    """Read the facts in our extended data."""
-    facts: dict[str, str] = {}
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Mark:
+    """What our extended data says of an entity."""
+
+    facts: Mapping[str, str]
+    put: Point | None
+    record_lines: tuple[str, ...]
+
+
+def _mark(tags: list[Pair], encoding: str) -> _Mark:
+    """Read our extended data."""
+    strings: list[str] = []
+    place: dict[int, bytes] = {}
     is_ours = False
     for pair in tags:
         if pair.code == 1001:
             is_ours = pair.value.strip().upper() == APPID.encode("ascii")
         elif is_ours and pair.code == 1000:
-            key, _, value = decode(pair.value, encoding).partition("=")
-            facts.setdefault(key, value)
-    return facts
+            strings.append(decode(pair.value, encoding))
+        elif is_ours and pair.code in (1010, 1020):
+            place.setdefault(pair.code, pair.value)
+    facts: dict[str, str] = {}
+    for text in strings:
+        key, _, value = text.partition("=")
+        facts.setdefault(key, value)
+    return _Mark(
+        facts=facts,
+        put=_point(place, 1010) if len(place) > 1 else None,
+        record_lines=tuple(s for s in strings if s.startswith("record=")),
+    )
 
 
 def _points(
@@ -213,12 +255,12 @@ def _points(
     return tuple(_point(values, code) for code in codes), False
 
 
-def _followers(drawing: Scan, record: int) -> list[list[Pair]]:
+def _followers(drawing: Scan, head: int) -> list[list[Pair]]:
     """Return the tags of a polyline's vertices."""
-    last = int(np.searchsorted(drawing.starts, drawing.entity_span(record)[1]))
+    last = int(np.searchsorted(drawing.starts, drawing.entity_span(head)[1]))
     return [
         drawing.whole(k, "a vertex on our layers")
-        for k in range(record + 1, last)
+        for k in range(head + 1, last)
         if drawing.kinds[k] == b"VERTEX"
     ]
 

@@ -61,7 +61,6 @@ def paint(
     settings: Settings,
     plot_scale: str | None,
     held_places: Mapping[str, Point],
-    held_texts: Mapping[str, str],
 ) -> Painting:
     """Paint all cables of a drawing.
 
@@ -78,8 +77,6 @@ def paint(
     held_places : mapping of str to Point
         Id of a label, or a part, to the place that a drafter gave it: its alignment point, or
         the part's origin as `Painting.origins` names it.
-    held_texts : mapping of str to str
-        Id to the text that a drafter put in place of ours.
 
     Returns
     -------
@@ -99,7 +96,6 @@ def paint(
         places=BlockPlaces(obstacles, _MARGIN * plotting.text_height),
         plotting=plotting,
         held_places=held_places,
-        held_texts=held_texts,
     )
     views = join_views(layout, solution, settings, plotting.text_height)
     painter.paint_elevations(views)
@@ -108,12 +104,11 @@ def paint(
         views=views,
         obstacles=obstacles,
         held_places=held_places,
-        held_texts=held_texts,
     )
     plan.paint_cells()
     painter.places.add_items(plan.items)
     for index, view in enumerate(views):
-        shapes = arrangements(view, settings.show.reference_temperature, held_texts)
+        shapes = arrangements(view, settings.show.reference_temperature)
         painter.places.prepare(view.prefix, [(shape.width, shape.height) for shape in shapes])
         painter.paint_diagram(index, view)
         painter.paint_schedule(view, shapes)
@@ -164,7 +159,6 @@ class _Painter:
     places: BlockPlaces
     plotting: Plotting
     held_places: Mapping[str, Point]
-    held_texts: Mapping[str, str]
     items: list[Item] = field(default_factory=list)
     diagrams: list[PlacedDiagram] = field(default_factory=list)
     origins: list[tuple[str, Point]] = field(default_factory=list)
@@ -175,7 +169,7 @@ class _Painter:
         ground = LabelGround(self.plotting.text_height)
         groups = []
         for view in views:
-            sketch = Sketch(rounder_of(view.cable), self.held_texts)
+            sketch = Sketch(rounder_of(view.cable))
             region = grown(extent(view), _ROUND * view.height)
             drawn = DrawnGround(self.obstacles, region, _COLUMN * view.height)
             arrows = plan_arrows(view, drawn)
@@ -197,9 +191,7 @@ class _Painter:
     def paint_diagram(self, index: int, view: View) -> None:
         """Paint force diagram and joints: in the frame, else where it is free."""
         rounder = rounder_of(view.cable)
-        maker = BlockMaker(
-            view=view, plotting=self.plotting, rounder=rounder, held_texts=self.held_texts
-        )
+        maker = BlockMaker(view=view, plotting=self.plotting, rounder=rounder)
         if view.cable.frame is not None and self._paint_in_frame(
             index, view, maker, view.cable.frame
         ):
@@ -259,7 +251,7 @@ class _Painter:
         chosen, (x, y), where = self.places.find(
             view.prefix, sizes, [self.places.beside(view.prefix, size) for size in sizes]
         )
-        sketch = draw_schedule(view, shapes[chosen], rounder, self.held_texts)
+        sketch = draw_schedule(view, shapes[chosen], rounder)
         origin, held = self._held(name, rounder)
         if origin is None:
             origin, held = rounder.point((x, y + shapes[chosen].height)), where
@@ -272,7 +264,7 @@ class _Painter:
             return
         rounder = rounder_of(view.cable)
         name = f"{view.prefix}/revisions"
-        sketch = draw_revisions(view, view.revisions, rounder, self.held_texts)
+        sketch = draw_revisions(view, view.revisions, rounder)
         x0, y0, x1, y1 = sketch.bounds()
         size = (x1 - x0, y1 - y0)
         origin, where = self._held(name, rounder)

@@ -13,6 +13,7 @@ import zlib
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.whole import Whole
 from dxfcable.errors import DrawingError
 
 if TYPE_CHECKING:
@@ -56,12 +57,16 @@ class FileFacts:
         Rows, tables and sections that are ours.
     origins : tuple of (str, Point)
         Where each part was put.
+    whole : Whole or None
+        What tells that an entity is missing, with the parts of `origins`; None in a record
+        that does not have it.
     """
 
     seed: tuple[str, str] | None = None
     opened: tuple[str, ...] = ()
     memory: Memory = field(default_factory=Memory)
     origins: tuple[tuple[str, Point], ...] = ()
+    whole: Whole | None = None
 
 
 def escape(text: str) -> str:
@@ -97,6 +102,9 @@ def facts_text(facts: FileFacts) -> str:
     ]
     lines += [("text", escape(k), escape(v)) for k, v in sorted(facts.memory.texts.items())]
     lines += [("origin", escape(k), repr(x), repr(y)) for k, (x, y) in facts.origins]
+    if facts.whole is not None:
+        counts = [str(count) for _, count in facts.whole.parts]
+        lines.append(("whole", str(facts.whole.count), f"{facts.whole.total:08X}", *counts))
     return ";".join(",".join(line) for line in lines)
 
 
@@ -154,6 +162,7 @@ def read_facts(records: Sequence[str]) -> FileFacts:
     places: dict[str, Point] = {}
     texts: dict[str, str] = {}
     origins: dict[str, Point] = {}
+    whole: Whole | None = None
     for record in records:
         for line in record.split(";"):
             key, *values = line.split(",")
@@ -167,9 +176,22 @@ def read_facts(records: Sequence[str]) -> FileFacts:
                 texts[unescape(values[0])] = unescape(values[1])
             elif key == "origin":
                 origins[unescape(values[0])] = (float(values[1]), float(values[2]))
+            elif key == "whole" and whole is None:
+                whole = _whole(values, tuple(origins))
     return FileFacts(
         seed=seed,
         opened=tuple(opened),
         memory=Memory(places=places, texts=texts),
         origins=tuple(origins.items()),
+        whole=whole,
+    )
+
+
+def _whole(values: Sequence[str], parts: Sequence[str]) -> Whole:
+    """Read the line that tells whether all entities are there; its parts stand before it."""
+    count, total, *counts = values
+    return Whole(
+        count=int(count),
+        total=int(total, 16),
+        parts=tuple(zip(parts, map(int, counts), strict=False)),
     )

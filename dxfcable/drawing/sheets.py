@@ -11,13 +11,8 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align
 from dxfcable.drawing.painting.sketch import Sketch, shown
-from dxfcable.drawing.sheeting.composing import (
-    CableSheet,
-    Cell,
-    Drawing,
-    cells_of,
-    continued,
-)
+from dxfcable.drawing.sheeting.blocks import Drawing
+from dxfcable.drawing.sheeting.composing import CableSheet, Cell, cells_of, continued
 from dxfcable.drawing.sheeting.paper_view import ROUNDER, scale_words
 from dxfcable.drawing.sheeting.ruled_table import Schedule
 from dxfcable.drawing.sheeting.ruling import ruled
@@ -34,7 +29,7 @@ if TYPE_CHECKING:
     from dxfcable.drawing.items import Item
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.sketch import Bounds
-    from dxfcable.drawing.sheeting.composing import Wanted
+    from dxfcable.drawing.sheeting.blocks import Block, Wanted
     from dxfcable.drawing.sheeting.papers import Paper
     from dxfcable.model import CableRevisions, Layout, RevisionRow, Solution
     from dxfcable.settings import Settings
@@ -184,22 +179,17 @@ class _Maker:
         revisions = [
             self.revisions[v.formed.mark] for v in views if v.formed.mark in self.revisions
         ]
-        cells = []
+        column, words = self._words(cables, views, revisions, where.words)
+        cells: list[Cell] = []
         regions = cells_of(where.main, len(views), 2 * paper.gap)
         for index, region in zip(cables, regions, strict=True):
-            cell = self._cell(index, region)
+            cell = self._cell(index, region, words if index == cables[-1] else ())
             if cell is None and may_continue:
                 raise _too_small(self.views[index], paper)
-            if cell is None:
+            if cell is None or (cell.wanted and not may_continue):
                 return None
-            cell.settle()
             cells.append(cell)
-        column, words = self._words(cables, views, revisions, where.words)
-        cells[-1].wanted += words
-        cells[-1].settle()
         wanted = [w for cell in cells for w in cell.wanted]
-        if wanted and not may_continue:
-            return None
         pages = [(*column, *(item for cell in cells for item in cell.items()))]
         pages += further_pages(wanted, where.main, paper)
         return Group(
@@ -212,7 +202,7 @@ class _Maker:
             revisions=_rows(revisions, is_several=len(views) > 1),
         )
 
-    def _cell(self, index: int, region: Bounds) -> Cell | None:
+    def _cell(self, index: int, region: Bounds, further: Sequence[Block]) -> Cell | None:
         view = self.views[index]
         sheet = CableSheet(
             view=view,
@@ -221,6 +211,7 @@ class _Maker:
             plot_scale=self.wish.plot_scale,
             revisions=self.revisions.get(view.formed.mark),
             fabrication=self.wish.fabrication.get(index, Fabrication()),
+            further=tuple(further),
         )
         return sheet.cell(region)
 
@@ -230,7 +221,7 @@ class _Maker:
         views: Sequence[View],
         revisions: Sequence[CableRevisions],
         room: Bounds | None,
-    ) -> tuple[list[Item], list[Wanted]]:
+    ) -> tuple[list[Item], list[Block]]:
         """Write notes and legend in their column; what has no room there is a block to place."""
         paper = self.wish.paper
         h, main = paper.text, places(paper).main
@@ -238,9 +229,9 @@ class _Maker:
         notes = notes_sketches(self._notes(cables), x1 - x0, y1 - y0, h)
         legend = legend_sketch(views, revisions, x1 - x0, h)
         if room is None:
-            return [], [Drawing(sketch=sketch) for sketch in (legend, *notes)]
+            return [], [Drawing(sketch=sketch) for sketch in (*notes, legend)]
         items: list[Item] = []
-        left: list[Wanted] = []
+        left: list[Block] = []
         top = y1
         for sketch in (*notes, legend):
             _, low, _, high = sketch.bounds()
@@ -279,14 +270,18 @@ def _rows(revisions: Sequence[CableRevisions], *, is_several: bool) -> tuple[Rev
 
 
 def further_pages(wanted: Sequence[Wanted], region: Bounds, paper: Paper) -> list[tuple[Item, ...]]:
-    """Put what is still wanted on further sheets."""
-    pages = []
-    rest = list(wanted)
-    while rest:
-        cell = continued(rest, region, paper)
-        pages.append(tuple(cell.items()))
-        rest = cell.wanted
-    return pages
+    """Put what is still wanted on further sheets: in order, unless that takes more of them."""
+    chains = []
+    for in_order in (True, False):
+        rest: Sequence[Wanted] = wanted
+        cells: list[Cell] = []
+        while rest:
+            cells.append(continued(rest, region, paper, in_order=in_order))
+            rest = cells[-1].wanted
+        chains.append(cells)
+        if len(cells) < 2:
+            break
+    return [tuple(cell.items()) for cell in min(chains, key=len)]
 
 
 def finish(
@@ -308,7 +303,7 @@ def finish(
         own = replace(fields, sheet=f"{number} / {len(pages)}")
         if number > 1:
             own = replace(own, supplement=f"{fields.supplement}, CONTINUED")
-        frame = Sketch(ROUNDER, {})
+        frame = Sketch(ROUNDER)
         draw_border(frame, paper)
         draw_title_block(frame, paper, own)
         sheets.append(Sheet(stem=stem, paper=paper, fields=own, items=(*frame.items, *page)))

@@ -16,14 +16,17 @@ from dxfcable.verifying.joint_laws import JointFacts
 from dxfcable.verifying.labelling import find_labels
 from dxfcable.verifying.loads import node_names
 from dxfcable.verifying.measuring import find_block, measure_cable
+from dxfcable.verifying.staleness import overruled
 
 if TYPE_CHECKING:
     from collections.abc import Mapping, Sequence
 
     from dxfcable.model import Anchorage, Cable, Layout, Point
+    from dxfcable.recorded import CableRecord
     from dxfcable.settings import Settings
     from dxfcable.verifying.cable_on_bench import CableOnBench
     from dxfcable.verifying.sheet import Sheet
+    from dxfcable.verifying.staleness import Overruled
     from dxfcable.verifying.tally import Tally
     from dxfcable.verifying.words import Reader
 
@@ -37,6 +40,7 @@ class Bench:
     reader: Reader
     settings: Settings
     owners: Mapping[str, int]
+    records: Mapping[str, CableRecord]
     places: list[tuple[Point, Point]] = field(default_factory=list)
 
     def hold_all(self, prefixes: Sequence[str]) -> dict[str, Tally]:
@@ -63,7 +67,7 @@ class Bench:
     def _measured(self, prefix: str) -> CableOnBench:
         """Measure the spans of one cable."""
         number = self.owners.get(prefix)
-        return measure_cable(
+        cable = measure_cable(
             self.sheet,
             prefix,
             number,
@@ -72,6 +76,14 @@ class Bench:
             self.settings,
             is_alone=len(self.owners) == 1,
         )
+        cable.overruled = frozenset(one.what for one in self.overruled(number))
+        return cable
+
+    def overruled(self, number: int | None) -> tuple[Overruled, ...]:
+        """Tell what of the data block of a cable in the layout was overruled at the issue."""
+        cable = None if number is None else self.layout.cables[number]
+        record = self.records.get(cable.mark) if cable else None
+        return overruled(record, cable) if record and cable else ()
 
     def _find_joints(self, cables: Sequence[CableOnBench]) -> None:
         """Work out the joints, where every cable of the layout could be measured."""
@@ -142,13 +154,18 @@ class Bench:
         largest = max((s.largest(k) for s in cable.spans for k in range(s.pieces)), default=0.0)
         first_node = first_piece = 0
         has_datum = demand.cable.datum is not None
+        # A support that gave way shows its own movement.
+        first = demand.cable.supports[0]
+        origin = (first.x, first.y) if first.key in cable.moved else cable.spans[0].curve[0]
         for span, shape in zip(cable.spans, cable.shapes, strict=True):
             carried = cable.carried_on(span.number) or ()
             hangers: list[float | None] = [
                 None if foot is None else node[1] - foot
                 for node, foot in zip(
                     span.nodes[1:-1],
-                    profile_laws.feet_of(span, demand.cable, carried),
+                    profile_laws.feet_of(
+                        self.sheet, span, demand.cable, carried, is_cut=cable.is_cut
+                    ),
                     strict=False,
                 )
             ]
@@ -161,7 +178,8 @@ class Bench:
                 names=names[first_node : first_node + span.pieces + 1],
                 first_piece=first_piece,
                 lift=demand.cable.datum or 0.0,
-                reference=None if has_datum else cable.spans[0].curve[0][1],
+                left=origin[0],
+                reference=None if has_datum else origin[1],
                 hangers=hangers,
                 largest=largest,
             )

@@ -32,6 +32,8 @@ class SpanLabels:
         Number of its first piece in the cable.
     lift : float
         Elevation minus ordinate [length].
+    left : float
+        Where places along the cable count from [length].
     reference : float or None
         Elevation that differences count from; None where labels are elevations.
     hangers : sequence of (float or None)
@@ -48,6 +50,7 @@ class SpanLabels:
     names: Sequence[str]  # of the span's nodes
     first_piece: int
     lift: float
+    left: float
     reference: float | None
     hangers: Sequence[float | None]
     largest: float

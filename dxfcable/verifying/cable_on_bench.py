@@ -33,6 +33,9 @@ class CableOnBench:
         Its place in the layout; None where the drafter's drawing does not have it.
     moved : dict of int to Point
         Heads of masts that stretching stays let go, by the support's key.
+    overruled : frozenset of str
+        RULE, UNDER: what of the data block does not count, since the record says that the
+        drawing was issued otherwise.
     """
 
     prefix: str
@@ -50,6 +53,7 @@ class CableOnBench:
     arrows: list[WantedArrow] = field(default_factory=list)
     heads: list[WantedHead] = field(default_factory=list)
     moved: dict[int, Point] = field(default_factory=dict)
+    overruled: frozenset[str] = frozenset()
 
     @property
     def is_cut(self) -> bool:

@@ -58,7 +58,10 @@ def _name(sheet: Sheet, label: IssuedEntity, name: str) -> None:
         and min(e.start[0], e.end[0]) - h <= x <= max(e.start[0], e.end[0]) + h
         and ends[0] - near <= e.start[1] <= ends[1] + near
     ]
-    for number, stroke in enumerate(sorted(level, key=lambda e: e.start[1])[:2], start=1):
+    # A stroke crosses the dimension's line; a level leader ends on it.
+    level.sort(key=lambda e: max(e.start[0], e.end[0]) <= x + near)
+    level.sort(key=lambda e: min(e.start[0], e.end[0]) >= x - near)
+    for number, stroke in enumerate(sorted(level[:2], key=lambda e: e.start[1]), start=1):
         sheet.adopt(f"{name}/level-{number}", stroke)
     below = [
         e

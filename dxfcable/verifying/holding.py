@@ -94,7 +94,9 @@ def _hold_spans(tally: Tally, sheet: Sheet, cable: CableOnBench, reader: Reader)
             ends = demand.cable.supports[span.number - 1 : span.number + 1]
             profile_laws.hold_ends(tally, span, (ends[0], ends[1]), cable.moved)
             profile_laws.hold_stations(tally, span, carried, is_cut=cable.is_cut)
-            profile_laws.hold_hangers(tally, sheet, span, demand.cable, carried)
+            profile_laws.hold_hangers(
+                tally, sheet, span, demand.cable, carried, is_cut=cable.is_cut
+            )
         diagram_laws.hold_diagram(tally, sheet, span, carried)
         profile_laws.hold_strings(tally, sheet, span, shape)
         profile_laws.hold_pole_distance(tally, sheet, span)
@@ -154,6 +156,8 @@ def _hold_under(tally: Tally, cable: CableOnBench) -> None:
         else:
             tally.hold(UNDER, 0.0, 1.0, "", entity)
     drawn = cable.demand.cable.under if cable.demand else None
+    if "UNDER" in cable.overruled:
+        return
     if drawn is not None and plain_under(drawn) != plain_under(combination.text):
         text = f'the data block says UNDER "{drawn}", the drawing is issued under'
         tally.fail(UNDER, f'{text} "{combination.text}"', words[0][0] if words else None)
@@ -170,7 +174,7 @@ def _hold_rule(tally: Tally, cable: CableOnBench, reader: Reader) -> None:
     words = _words_of_rule(cable, reader)
     if cable.is_cut:
         return  # its unstressed lengths govern, which the schedule states
-    if drawn.rule is not None:
+    if drawn.rule is not None and "RULE" not in cable.overruled:
         profile = cable.spans[0].profile
         hold_rule(tally, shapes, asked_by(drawn.rule, drawn.datum), profile, reader)
     if words is None:

@@ -92,7 +92,7 @@ def _measure_spans(sheet: Sheet, cable: CableOnBench) -> None:
         first_ray += len(span.rays)
         first_load += len(span.steps)
         if carried is not None and demand is not None and not sheet.has_marks:
-            profile_laws.name_hangers(sheet, span, demand.cable, carried)
+            profile_laws.name_hangers(sheet, span, demand.cable, carried, is_cut=cable.is_cut)
 
 
 def _schedule(sheet: Sheet, prefix: str, mark: str, *, is_alone: bool) -> Schedule | None:

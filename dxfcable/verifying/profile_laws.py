@@ -153,11 +153,20 @@ def _hold_sag(tally: Tally, sheet: Sheet, span: SpanFigures, shape: Shape) -> No
     tally.hold(STRINGS, off, near * (1.0 + slope), text, line)
 
 
-def feet_of(span: SpanFigures, cable: Cable, carried: Sequence[Carried]) -> list[float | None]:
-    """Give what each hanger of a span runs down to, None where there is none."""
+def feet_of(
+    sheet: Sheet, span: SpanFigures, cable: Cable, carried: Sequence[Carried], *, is_cut: bool
+) -> list[float | None]:
+    """Give what each hanger of a span runs down to, None where there is none.
+
+    Hangers of a cable that is cut keep the lengths they were formed with and take the deck along:
+    they end where they are drawn.
+    """
     nodes = span.nodes[1:-1]
     if len(nodes) != len(carried):
         return [None] * len(carried)
+    if is_cut:
+        lines = [sheet.named.get(f"{span.prefix}/hanger/{load.name}") for load in carried]
+        return [line.end[1] if line is not None else None for line in lines]
     mine = {load.point: node[1] for load, node in zip(carried, nodes, strict=True)}
     heights = [mine.get(point, point.y) for point in cable.loads]
     feet = dict(zip(cable.loads, hanger_feet(cable, heights, Remarks(cable)), strict=True))
@@ -165,13 +174,20 @@ def feet_of(span: SpanFigures, cable: Cable, carried: Sequence[Carried]) -> list
 
 
 def hold_hangers(
-    tally: Tally, sheet: Sheet, span: SpanFigures, cable: Cable, carried: Sequence[Carried]
+    tally: Tally,
+    sheet: Sheet,
+    span: SpanFigures,
+    cable: Cable,
+    carried: Sequence[Carried],
+    *,
+    is_cut: bool,
 ) -> None:
     """Hold hangers against nodes and deck."""
     nodes = span.nodes[1:-1]
     if len(nodes) != len(carried):
         return
-    for node, load, foot in zip(nodes, carried, feet_of(span, cable, carried), strict=True):
+    feet = feet_of(sheet, span, cable, carried, is_cut=is_cut)
+    for node, load, foot in zip(nodes, carried, feet, strict=True):
         name = f"{span.prefix}/hanger/{load.name}"
         line = sheet.named.get(name)
         if foot is None:
@@ -187,22 +203,30 @@ def hold_hangers(
             tally.hold(HANGERS, off, 4.0 * span.grain, text, line)
 
 
-def name_hangers(sheet: Sheet, span: SpanFigures, cable: Cable, carried: Sequence[Carried]) -> None:
-    """Find hangers without marks by the nodes that they hang from."""
+def name_hangers(
+    sheet: Sheet, span: SpanFigures, cable: Cable, carried: Sequence[Carried], *, is_cut: bool
+) -> None:
+    """Find hangers without marks by their nodes and feet; of a cut cable by nodes alone."""
     nodes = span.nodes[1:-1]
-    feet = feet_of(span, cable, carried)
+    feet = feet_of(sheet, span, cable, carried, is_cut=False)
     due = [
-        (load.name, node, (node[0], foot))
+        (load.name, node, (node[0], node[1] if foot is None else foot))
         for load, node, foot in zip(carried, nodes, feet, strict=False)
-        if foot is not None
+        if foot is not None or is_cut
     ]
     pool = [e for e in sheet.loose if e.kind == "LINE" and "hanger" in e.roles]
     pool = [e for e in pool if span.curve[0][0] <= e.start[0] <= span.curve[-1][0]]
     costs = [
-        [math.dist(e.start, top) + math.dist(e.end, foot) for _, top, foot in due] for e in pool
+        [
+            math.dist(e.start, top)
+            + (abs(e.end[0] - foot[0]) if is_cut else math.dist(e.end, foot))
+            for _, top, foot in due
+        ]
+        for e in pool
     ]
     for i, j in pair(costs) if pool and due else ():
-        sheet.adopt(f"{span.prefix}/hanger/{due[j][0]}", pool[i])
+        if not is_cut or costs[i][j] <= sheet.height:
+            sheet.adopt(f"{span.prefix}/hanger/{due[j][0]}", pool[i])
 
 
 def hold_curve(tally: Tally, span: SpanFigures, shape: Shape, length_unit: str) -> None:

@@ -24,6 +24,7 @@ if TYPE_CHECKING:
     from dxfcable.recorded import CableRecord
     from dxfcable.settings import Settings
     from dxfcable.verifying.sheet import Sheet
+    from dxfcable.verifying.staleness import Overruled
     from dxfcable.verifying.tally import Check, Difference
 
 
@@ -35,12 +36,15 @@ class CableProof:
     ----------
     reasons : tuple of str
         Why it is stale; empty where it is not, or where there is no record.
+    overruled : tuple of Overruled
+        What the command line overruled when it was issued.
     """
 
     mark: str
     reasons: tuple[str, ...]
     checks: tuple[Check, ...]
     differences: tuple[Difference, ...]
+    overruled: tuple[Overruled, ...] = ()
 
     @property
     def stale(self) -> bool:
@@ -57,7 +61,6 @@ def prove(
     issued: Issued,
     layout: Layout,
     records: Sequence[CableRecord],
-    redrawn: frozenset[str],
     settings: Settings,
 ) -> tuple[CableProof, ...]:
     """Hold every cable of a drawing against the laws of statics.
@@ -70,8 +73,6 @@ def prove(
         What the drafter drew.
     records : sequence of CableRecord
         For what changed since; may be empty.
-    redrawn : frozenset of str
-        Handles of linework that was moved by itself since it was drawn.
     settings : Settings
         For digits, cases, anchors.
 
@@ -89,10 +90,17 @@ def prove(
         force_unit=layout.force_unit or "N",
         digits=settings.show.force_digits,
     )
-    bench = Bench(sheet=sheet, layout=layout, reader=reader, settings=settings, owners=owners)
+    bench = Bench(
+        sheet=sheet,
+        layout=layout,
+        reader=reader,
+        settings=settings,
+        owners=owners,
+        records={record.mark: record for record in records},
+    )
     tallies = bench.hold_all(prefixes)
     fault = next((f for f in layout.findings if f.severity is Severity.ERROR), None)
-    hold_whole(tallies, sheet, issued, redrawn, fault, bench.places)
+    hold_whole(tallies, sheet, issued, fault, bench.places)
     marks = {p: layout.cables[owners[p]].mark if p in owners else p for p in prefixes}
     found = [
         CableProof(
@@ -100,6 +108,7 @@ def prove(
             reasons=_reasons(marks[prefix], records, layout, sheet),
             checks=tallies[prefix].checks(),
             differences=tuple(tallies[prefix].differences),
+            overruled=bench.overruled(owners.get(prefix)),
         )
         for prefix in prefixes
     ]

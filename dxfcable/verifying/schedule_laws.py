@@ -54,13 +54,12 @@ def _hold_points(
     rows = schedule.points
     due: list[tuple[str, str, dict[str, Cell]]] = []
     marks = _marks(spans[0].cable)
-    start = spans[0].span.curve[0][0]
     for facts in spans:
         for k, (node, name) in enumerate(zip(facts.span.nodes, facts.names, strict=False)):
             if k == 0 and due:
                 continue
             mark = marks[len(due)] if len(due) < len(marks) else ""
-            due.append((name, mark, _point_cells(facts, k, node[0] - start, node[1])))
+            due.append((name, mark, _point_cells(facts, k, node[0] - facts.left, node[1])))
     if len(rows) != len(due):
         text = f"the table of points has {len(rows)} rows, {len(due)} are due"
         tally.fail(SCHEDULE, text, schedule.title)

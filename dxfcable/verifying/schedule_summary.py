@@ -100,8 +100,11 @@ def _hold_given(
         if rest.split(" ")[0] != reader.length_unit:
             tally.fail(SCHEDULE, f'CABLE WEIGHT says "{weight.text}"', weight)
     datum = known.get("ELEVATIONS")
-    if datum is not None and (datum.text == "DATUM OF EL") is not (cable.datum is not None):
-        tally.fail(SCHEDULE, f'ELEVATIONS says "{datum.text}"', datum)
+    if datum is not None:
+        due = f"DIFFERENCES FROM {cable.supports[0].mark or 'LEFT'}"
+        due = due if cable.datum is None else "DATUM OF EL"
+        if datum.text.strip().removesuffix(" AS DRAWN") != due:
+            tally.fail(SCHEDULE, f'ELEVATIONS says "{datum.text}", not "{due}"', datum)
     status, level = known.get("STATUS"), known.get("LEVEL")
     if status is not None and status.text not in ("FORMED", "CUT"):
         tally.fail(SCHEDULE, f'STATUS says "{status.text}"', status)

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from dxfcable.model import RuleKind
@@ -10,7 +11,7 @@ from dxfcable.model import RuleKind
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from dxfcable.model import Cable, LoadPoint, Support
+    from dxfcable.model import Cable, LoadPoint, Rule, Support
     from dxfcable.recorded import CableRecord, RecordedLoad
 
 _SAME = 1e-9  # relative: the record holds every digit
@@ -101,23 +102,70 @@ def _cases(cases: Sequence[tuple[str, float]]) -> str:
     )
 
 
-def _governing(record: CableRecord, cable: Cable) -> list[str]:
-    """Compare what the data block says with what was used; what it leaves open may be anything."""
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Overruled:
+    """What a data block states, and what the drawing was issued with instead.
+
+    Attributes
+    ----------
+    what : str
+        `RULE` or `UNDER`.
+    """
+
+    what: str
+    stated: str
+    used: str
+
+
+def overruled(record: CableRecord, cable: Cable) -> tuple[Overruled, ...]:
+    """Tell what the command line overruled at the issue, of what the data block states still."""
     found = []
-    rule = cable.rule
-    if rule is not None:
-        before = record.rule
-        is_same = rule.kind is before.kind and math.isclose(
-            rule.value, before.value, rel_tol=_SAME, abs_tol=_SAME
-        )
-        if rule.kind is RuleKind.THROUGH and rule.kind is before.kind:
-            there, here = before.point or (math.nan, math.nan), rule.point or (0.0, 0.0)
-            is_same = math.dist(there, here) <= _SAME * max(1.0, *(abs(c) for c in here))
-        if not is_same:
-            text = f"the data block says {rule.kind.name} {rule.value:g}, the record"
-            found.append(f"{text} {before.kind.name} {before.value:g}")
-    if cable.under is not None and plain_under(cable.under) != plain_under(record.under):
-        found.append(f'the data block says UNDER "{cable.under}", the record "{record.under}"')
+    stated, now = record.stated_rule, cable.rule
+    if stated and now and _is_same_rule(stated, now) and not _is_same_rule(stated, record.rule):
+        found.append(Overruled(what="RULE", stated=_words(stated), used=_words(record.rule)))
+    under = record.stated_under
+    is_stated = under and cable.under and plain_under(under) == plain_under(cable.under)
+    if under and is_stated and plain_under(under) != plain_under(record.under):
+        found.append(Overruled(what="UNDER", stated=f'"{under}"', used=f'"{record.under}"'))
+    return tuple(found)
+
+
+def _is_same_rule(one: Rule, other: Rule) -> bool:
+    if one.kind is not other.kind:
+        return False
+    if one.kind is RuleKind.THROUGH:
+        there, here = one.point or (math.nan, math.nan), other.point or (0.0, 0.0)
+        return math.dist(there, here) <= _SAME * max(1.0, *(abs(c) for c in here))
+    return math.isclose(one.value, other.value, rel_tol=_SAME, abs_tol=_SAME)
+
+
+def _words(rule: Rule) -> str:
+    """Write a rule as it was stated, with its name once."""
+    name = rule.kind.name
+    return rule.text if rule.text.upper().startswith(name) else f"{name} {rule.text}".strip()
+
+
+def _governing(record: CableRecord, cable: Cable) -> list[str]:
+    """Compare the data block with what it said at the issue, or with what was used.
+
+    What it left open then and leaves open now may be anything.
+    """
+    found = []
+    stated, rule = record.stated_rule, cable.rule
+    if rule is None and stated is not None:
+        found.append(f"the data block said {_words(stated)}, now no rule")
+    elif rule is not None and not any(_is_same_rule(r, rule) for r in (stated, record.rule) if r):
+        source = "the data block said" if stated else "the record says"
+        found.append(f"{source} {_words(stated or record.rule)}, now {_words(rule)}")
+    before, under = record.stated_under, cable.under
+    if under is None and before is not None:
+        found.append(f'the data block said UNDER "{before}", now nothing')
+    elif under is not None and plain_under(under) not in (
+        plain_under(before or record.under),
+        plain_under(record.under),
+    ):
+        source = "the data block said" if before else "the record says"
+        found.append(f'{source} UNDER "{before or record.under}", now "{under}"')
     for word, before_value, now in (
         ("WEIGHT", record.weight, cable.weight),
         ("EA", record.ea or 0.0, cable.ea or 0.0),

@@ -5,8 +5,12 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+import numpy as np
+
+from dxfcable.drawing.whole import missing
+
 if TYPE_CHECKING:
-    from collections.abc import Mapping, Sequence
+    from collections.abc import Iterable, Mapping, Sequence
 
     from dxfcable.drawing.issued import Issued, IssuedEntity
     from dxfcable.model import Finding, Point
@@ -22,13 +26,14 @@ _OURS_ALONE = frozenset(
     )
 )
 _LONGEST_LEADER = 16.0  # text heights
+_SAME_PLACE = 1e-5  # of the larger of the coordinate and one unit: other programs round
+_MOVED = 0.01  # of a text height: within a part that was moved as one
 
 
 def hold_whole(
     tallies: Mapping[str, Tally],
     sheet: Sheet,
     issued: Issued,
-    redrawn: frozenset[str],
     fault: Finding | None,
     places: Sequence[tuple[Point, Point]],
 ) -> None:
@@ -38,8 +43,6 @@ def hold_whole(
     ----------
     tallies : mapping of str to Tally
         By the first part of ids.
-    redrawn : frozenset of str
-        Handles of what was moved by itself.
     fault : Finding or None
         Why the drafter's drawing does not read.
     places : sequence of (Point, Point)
@@ -48,12 +51,13 @@ def hold_whole(
     if not tallies:
         return
     first = next(iter(tallies.values()))
+    strayed = _strayed(issued.marked.values(), sheet.height)
     for prefix, tally in tallies.items():
         own = [e for name, e in sheet.named.items() if name.startswith(f"{prefix}/")]
         for entity in own:
             if entity.was_edited:
                 tally.fail(WHOLE, f'{entity.id} was edited by hand: "{entity.text}"', entity)
-            elif entity.handle is not None and entity.handle in redrawn:
+            elif entity.offset in strayed:
                 tally.fail(WHOLE, f"{entity.id} was moved by itself", entity)
             else:
                 tally.hold(WHOLE, 0.0, 1.0, "", entity)
@@ -62,6 +66,7 @@ def hold_whole(
     for copy in issued.copies:
         tally = tallies.get(copy.id.partition("/")[0], first)
         tally.fail(WHOLE, f"{copy.kind} is a copy of {copy.id}", copy)
+    _hold_count(tallies, issued)
     _hold_leaders(tallies, sheet, places)
     for entity in _strangers(sheet, places):
         what = f'{entity.kind} "{entity.text}"' if entity.text else entity.kind
@@ -69,6 +74,49 @@ def hold_whole(
         first.fail(WHOLE, text, entity)
     for entity in _doubled(issued):
         first.fail(WHOLE, f'{entity.kind} "{entity.text}" stands twice in one place', entity)
+
+
+def _strayed(entities: Iterable[IssuedEntity], height: float) -> set[int]:
+    """List linework that does not stand where it was put, nor went with its part; by offset."""
+    groups: dict[str, list[IssuedEntity]] = {}
+    for entity in entities:
+        if entity.put is not None:
+            groups.setdefault(entity.part, []).append(entity)
+    found = set()
+    for members in groups.values():
+        shifts = np.array([np.subtract(e.start, e.put or e.start) for e in members])
+        known = shifts[np.isfinite(shifts).all(axis=1)]
+        across, up = np.median(known, axis=0) if known.size else (0.0, 0.0)
+        is_moved = len(members) > 1 and math.hypot(across, up) > _MOVED * height
+        for entity, (dx, dy) in zip(members, shifts, strict=True):
+            off, reach = math.hypot(dx, dy), _SAME_PLACE * max(1.0, *map(abs, entity.start))
+            if is_moved:
+                off, reach = math.hypot(dx - across, dy - up), _MOVED * height
+            if not off <= reach and not entity.text:
+                found.add(entity.offset)
+    return found
+
+
+def _hold_count(tallies: Mapping[str, Tally], issued: Issued) -> None:
+    """Hold the number of entities, and the sum of their ids, against the record."""
+    first = next(iter(tallies.values()))
+    if issued.whole is None:
+        return
+    lost = missing(issued.whole, {name: e.part for name, e in issued.marked.items()})
+    if lost is None:
+        first.hold(WHOLE, 0.0, 1.0, "")
+        return
+    if lost.extra:
+        first.fail(WHOLE, f"{lost.extra} entities carry ids that were not issued")
+    elif lost.name:
+        tallies.get(lost.name.partition("/")[0], first).fail(WHOLE, f"{lost.name} is missing")
+    else:
+        of_parts = [f"{count} of {part}" for part, count in lost.parts]
+        rest = lost.count - sum(count for _, count in lost.parts)
+        words = ", ".join([*of_parts, *([f"{rest} elsewhere"] if rest else [])])
+        tally = tallies.get(lost.parts[0][0].partition("/")[0], first) if lost.parts else first
+        noun = "entity of ours is" if lost.count == 1 else "entities of ours are"
+        tally.fail(WHOLE, f"{lost.count} {noun} missing: {words}")
 
 
 def _hold_leaders(

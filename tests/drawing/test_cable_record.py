@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 from hypothesis import given, settings
@@ -99,6 +101,8 @@ _RECORDS = st.builds(
     heads=st.lists(_HEADS, max_size=2).map(tuple),
     combos=st.lists(_TEXTS, max_size=2).map(tuple),
     revisions=st.none() | _REVISIONS,
+    stated_rule=st.none() | _RULES,
+    stated_under=st.none() | _TEXTS,
 )
 
 # As the version before wrote it: without what the drawing said and what was formed under.
@@ -151,6 +155,14 @@ def test_every_field_reads_back_exactly(cable: CableRecord) -> None:
     found = read_cable(cable_text(cable))
     assert found == cable
     assert repr(found) == repr(cable)  # tells -0.0 from 0.0
+
+
+def test_a_record_without_what_the_data_block_stated_reads_as_none() -> None:
+    stated = Rule(kind=RuleKind.PULL, value=55.0, text="PULL 55 kN")
+    lines = cable_text(replace(kept(), stated_rule=stated, stated_under="D + L")).split(";")
+    before = ";".join(line for line in lines if not line.startswith("stated-"))
+    assert len(before.split(";")) == len(lines) - 2
+    assert read_cable(before) == kept()
 
 
 @settings(max_examples=40)

@@ -38,7 +38,6 @@ def painting(drawn: tuple[Layout, Solution], places: dict[str, Point] | None = N
         settings=Settings(),
         plot_scale="1:100",
         held_places=places or {},
-        held_texts={},
     )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import functools
 from dataclasses import replace
 
 import numpy as np
@@ -19,9 +20,15 @@ from dxfcable.pairing import pair
 from dxfcable.settings import Settings
 from tests.generated import copy_records
 from tests.issued_cases import SCENARIOS, issued
-from tests.tampering import open_issued, unmarked
+from tests.proving import opened
+from tests.tampering import unmarked
 
 NAMES = tuple(SCENARIOS)
+
+
+@functools.cache
+def as_issued(name: str) -> Issued:
+    return read(issued(name))
 
 
 def read(data: bytes) -> Issued:
@@ -31,7 +38,7 @@ def read(data: bytes) -> Issued:
 
 @pytest.mark.parametrize("name", NAMES)
 def test_every_marked_entity_is_read_with_its_handle_and_geometry(name: str) -> None:
-    file, found = open_issued(issued(name)), read(issued(name))
+    file, found = opened(name), as_issued(name)
     assert found.marked.keys() == file.ours.keys()
     assert not found.unmarked
     assert not found.copies
@@ -46,7 +53,7 @@ def test_every_marked_entity_is_read_with_its_handle_and_geometry(name: str) -> 
 
 @pytest.mark.parametrize("name", NAMES)
 def test_without_marks_the_same_entities_stand_there_unmarked(name: str) -> None:
-    before, after = read(issued(name)), read(unmarked(issued(name)))
+    before, after = as_issued(name), read(unmarked(issued(name)))
     assert not after.marked
     assert [e.points for e in after.unmarked] == [
         e.points for e in sorted(before.marked.values(), key=lambda e: e.offset)
@@ -62,13 +69,13 @@ def test_copies_are_told_from_the_entities_issued() -> None:
 
 
 def test_a_text_edited_by_hand_is_told() -> None:
-    found = read(open_issued(issued("light")).retexted("C1/tension/1", "999 kN"))
+    found = read(opened("light").retexted("C1/tension/1", "999 kN"))
     assert [e.id for e in found.marked.values() if e.was_edited] == ["C1/tension/1"]
 
 
 @pytest.mark.parametrize("name", NAMES)
 def test_linework_gets_the_ids_by_place_that_its_marks_would_give(name: str) -> None:
-    marked = read(issued(name)).marked
+    marked = as_issued(name).marked
     expected = [
         ExpectedSpan(mark=head, prefix=head, number=1, left=e.start, right=e.end)
         for k, e in marked.items()
@@ -86,7 +93,7 @@ def test_linework_gets_the_ids_by_place_that_its_marks_would_give(name: str) -> 
 
 @pytest.mark.parametrize("name", NAMES)
 def test_schedules_and_scales_are_the_same_by_ids_and_by_place(name: str) -> None:
-    marked = read(issued(name)).marked
+    marked = as_issued(name).marked
     by_ids = sorted(schedules_by_ids(marked), key=lambda s: s.mark)
     by_place = sorted(schedules_by_place(marked.values()), key=lambda s: s.mark)
     assert len(by_ids) == len(by_place) == SCENARIOS[name].cables

@@ -51,7 +51,7 @@ def place(
     held: dict[str, Point] | None = None,
     drawn: DrawnGround | None = None,
 ) -> dict[str, Point]:
-    sketch = Sketch(Rounder(6), {})
+    sketch = Sketch(Rounder(6))
     group = Group(labels=labels, sketch=sketch, drawn=drawn)
     put_labels([group], LabelGround(1.0) if ground is None else ground, held)
     return {item.id: item.at for item in sketch.items if isinstance(item, TextItem)}
@@ -162,7 +162,7 @@ def test_a_box_about_the_object_named_is_its_symbol_and_weighs_as_a_line() -> No
 
 
 def test_labels_of_two_views_make_room_for_each_other() -> None:
-    one, other = Sketch(Rounder(6), {}), Sketch(Rounder(6), {})
+    one, other = Sketch(Rounder(6)), Sketch(Rounder(6))
     groups = [
         Group(labels=(label("a", (0.0, 0.0), (0.0, 5.0)),), sketch=one),
         Group(labels=(label("b", (1.0, 0.0)),), sketch=other),
@@ -202,7 +202,7 @@ def test_a_held_label_stands_and_the_others_give_way() -> None:
 
 
 def leaders(*labels: Label, ground: LabelGround | None = None) -> dict[str, LineItem]:
-    sketch = Sketch(Rounder(6), {})
+    sketch = Sketch(Rounder(6))
     group = Group(labels=labels, sketch=sketch)
     put_labels([group], LabelGround(1.0) if ground is None else ground)
     return {item.id: item for item in sketch.items if isinstance(item, LineItem)}

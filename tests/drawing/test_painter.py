@@ -45,7 +45,6 @@ def painted(*cases: Case, plot_scale: str | None = None) -> tuple[Painting, Layo
         settings=Settings(),
         plot_scale=plot_scale,
         held_places={},
-        held_texts={},
     )
     return painting, layout, solution
 
@@ -241,7 +240,6 @@ def test_a_cable_with_weight_has_two_rays_a_piece() -> None:
         settings=Settings(),
         plot_scale=None,
         held_places={},
-        held_texts={},
     )
     ids = by_id(painting)
     assert len(painting.diagrams[0].rays) == 4
@@ -347,7 +345,6 @@ def test_letters_stand_on_the_side_of_the_loads(deck: float | None, side: float)
         settings=Settings(),
         plot_scale="1:100",
         held_places={},
-        held_texts={},
     )
     for piece in solution.cables[0].segments:
         item = by_id(painting)[f"C1/letter/{piece.name[:-1]}"]
@@ -397,5 +394,4 @@ def test_layout_and_solution_must_have_the_same_cables() -> None:
             settings=Settings(),
             plot_scale=None,
             held_places={},
-            held_texts={},
         )

@@ -121,7 +121,6 @@ def scene(count: int, seed: int, panel: float) -> Scene:
         settings=Settings(),
         plot_scale="1:100",
         held_places={},
-        held_texts={},
     )
     return Scene(layout, solution, obstacles, painting)
 

@@ -41,7 +41,6 @@ def painted(
     obstacles: Obstacles | None = None,
     plot_scale: str | None = None,
     places: dict[str, Point] | None = None,
-    texts: dict[str, str] | None = None,
 ) -> Painting:
     return paint(
         layout,
@@ -50,7 +49,6 @@ def painted(
         settings=Settings(),
         plot_scale=plot_scale,
         held_places=places or {},
-        held_texts=texts or {},
     )
 
 
@@ -350,11 +348,11 @@ def test_schedules_stand_with_their_own_cable() -> None:
 def test_a_schedule_is_as_large_as_was_reckoned_in_every_shape(count: int) -> None:
     layout, solution = layout_of(Case(spans=(even(count, 60.0),), mast=9.0, stay_run=9.0))
     view = join_views(layout, solution, Settings(), 0.25)[0]
-    shapes = arrangements(view, "10 C", {})
+    shapes = arrangements(view, "10 C")
     assert len(shapes) >= 4
     names = set()
     for shape in shapes:
-        sketch = draw_schedule(view, shape, Rounder(9), {})
+        sketch = draw_schedule(view, shape, Rounder(9))
         x0, y0, x1, y1 = sketch.bounds()
         assert (x0, y1) == (0.0, 0.0)
         assert (x1, -y0) == pytest.approx((shape.width, shape.height))
@@ -384,14 +382,6 @@ def test_a_schedule_takes_the_shape_that_fits_the_sheet() -> None:
     assert x1 < 44.0
     assert y0 > -40.0
     assert y1 < 20.0
-
-
-def test_held_texts_stand_in_place_of_ours() -> None:
-    texts = {"C1/tension/1": "65 kN \u00b1", "C1/schedule/title": "MAIN CABLE, NORTH"}
-    painting = painted(*layout_of(SAMPLE), texts=texts)
-    found = {i.id: i.text for i in painting.items if isinstance(i, TextItem)}
-    assert found["C1/tension/1"] == "65 kN %%p"
-    assert found["C1/schedule/title"] == "MAIN CABLE, NORTH"
 
 
 @pytest.mark.parametrize("shift", [(1e6, 0.0), (-3e5, 1e6)])

@@ -8,6 +8,7 @@ from hypothesis import strategies as st
 
 from dxfcable.drawing import record
 from dxfcable.drawing.record import FileFacts, Memory
+from dxfcable.drawing.whole import Whole
 from dxfcable.errors import DrawingError
 
 _NAMES = st.text(min_size=1, max_size=12)
@@ -47,18 +48,25 @@ def test_one_spoiled_copy_does_no_harm(text: str, data: st.DataObject) -> None:
     st.dictionaries(_NAMES, st.text(max_size=20), max_size=4),
     st.lists(_NAMES, max_size=4, unique=True),
     st.none() | st.tuples(st.just("2F"), st.just("40")),
+    st.none() | st.tuples(st.integers(0, 9999), st.integers(0, 2**32 - 1)),
 )
 def test_what_concerns_the_file_reads_back_exactly(
     places: dict[str, tuple[float, float]],
     texts: dict[str, str],
     opened: list[str],
     seed: tuple[str, str] | None,
+    sums: tuple[int, int] | None,
 ) -> None:
     facts = FileFacts(
         seed=seed,
         opened=tuple(opened),
         memory=Memory(places=places, texts=texts),
         origins=tuple(places.items()),
+        whole=Whole(
+            count=sums[0], total=sums[1], parts=tuple((part, k) for k, part in enumerate(places))
+        )
+        if sums
+        else None,
     )
     assert record.read_facts([record.facts_text(facts)]) == facts
 

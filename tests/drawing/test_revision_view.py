@@ -38,7 +38,7 @@ from tests.generated import drawing
 H = 0.25  # text height at 1:100 [m]
 ROWS = (
     RevisionRow(number=1, rev="A", description="Issued for tender", by="RK", date="2026-03-02"),
-    RevisionRow(number=2),
+    RevisionRow(number=2, rev="2"),
 )
 Point = tuple[float, float]
 
@@ -88,7 +88,6 @@ def painted(
         settings=Settings(),
         plot_scale="1:100",
         held_places=held or {},
-        held_texts={},
     )
 
 
@@ -146,7 +145,7 @@ def test_each_point_that_moved_has_its_triangle_with_the_number_and_the_change_i
     for change in solution.revisions[0].changes:
         name = f"C1/revision/{change.mark}"
         assert texts[name] == f"dy {change.dy:+.3f} m"
-        assert texts[f"{name}/rev"] == "2"  # nobody gave it a letter
+        assert texts[f"{name}/rev"] == "2"
         triangle = items[f"{name}/triangle"]
         assert isinstance(triangle, PolylineItem)
         assert triangle.is_closed
@@ -154,11 +153,30 @@ def test_each_point_that_moved_has_its_triangle_with_the_number_and_the_change_i
     assert "C1/revision/P2" not in texts
 
 
-def test_the_letter_given_goes_before_the_number() -> None:
+def test_the_letter_given_stands_in_triangle_and_row() -> None:
     painting = painted(revised(3, rows=(RevisionRow(number=1, rev=" B "),)))
     texts = texts_of(painting)
     assert texts["C1/revision/P1/rev"] == "B"
     assert texts["C1/revisions/row/1/rev"] == "B"
+
+
+@pytest.mark.parametrize("count", [4, 30])
+def test_where_no_letter_was_given_none_is_drawn(count: int) -> None:
+    rows = (RevisionRow(number=1, rev="A"), RevisionRow(number=2, rev=" ", by="RK"))
+    painting = painted(revised(count, rows=rows, panel=40.0 if count == 4 else 8.0))
+    texts = texts_of(painting)
+    triangles = [i for i in painting.items if i.id.endswith("/triangle")]
+    assert triangles
+    assert [name for name in texts if name.endswith("/rev")] == [
+        "C1/revisions/row/head/rev",
+        "C1/revisions/row/1/rev",
+    ]
+    assert texts["C1/revisions/row/2/by"] == "RK"
+    said = [text for name, text in texts.items() if "/revision/old-label/" in name]
+    assert set(said) <= {"BEFORE REVISION"}
+    assert said or count == 30
+    if count == 30:
+        assert texts["C1/revisions/moved/head/mark"] == "MOVED BY REVISION"
 
 
 def test_a_sideways_movement_is_told_where_it_shows() -> None:
@@ -303,17 +321,42 @@ def test_a_tag_stands_within_three_heights_of_its_point(
     found = 0
     for change in solution.revisions[0].changes:
         name = f"C1/revision/{change.mark}"
-        if name not in items:
-            continue
-        found += 1
-        gaps = []
-        for item in (items[name], items.get(f"{name}/row-2"), items[f"{name}/triangle"]):
-            if isinstance(item, TextItem):
-                gaps.append(distance(text_corners(item), (change.at, change.at)))
-            elif isinstance(item, PolylineItem):
-                gaps.append(distance(item.points, (change.at, change.at)))
-        assert min(gaps) <= 3.0 * H + 1e-6
+        if name in items:
+            found += 1
+            assert min(tag_gaps(items, name, change.at)) <= 3.0 * H + 1e-6
     assert found
+
+
+def tag_gaps(items: dict[str, Item], name: str, at: Point) -> list[float]:
+    """Give the distances of a tag's words and triangle from a point."""
+    gaps = []
+    for item in (items[name], items.get(f"{name}/row-2"), items[f"{name}/triangle"]):
+        if isinstance(item, TextItem):
+            gaps.append(distance(text_corners(item), (at, at)))
+        elif isinstance(item, PolylineItem):
+            gaps.append(distance(item.points, (at, at)))
+    return gaps
+
+
+def test_a_tag_goes_further_off_with_a_leader_where_a_drafter_filled_all_about_its_point() -> None:
+    made = revised(3)
+    change = made[1].revisions[0].changes[0]
+    (x, y), reach = change.at, 3.2 * H
+    own = obstacles_of(made[0])
+    # Load texts and levels in columns above and below the point, a gap over it for the leader.
+    boxes = [
+        (x + side * 0.3 * H, y + k * 0.8 * H, x + side * 9.0 * H, y + (k + 0.7) * 0.8 * H)
+        for k in range(-4, 4)
+        for side in (-1, 1)
+    ]
+    boxes = [(min(a, c), b, max(a, c), d) for a, b, c, d in boxes]
+    painting = painted(made, obstacles=Obstacles(own.segments, np.array(boxes)))
+    items = by_id(painting)
+    tag = [i for i in on_layer(painting) if i.part == f"C1/revision/{change.mark}"]
+    words = [i for i in tag if isinstance(i, TextItem)]
+    assert boxed_texts(words, boxes) == []
+    assert min(tag_gaps(items, words[0].id, change.at)) > reach
+    assert f"{words[0].id}/leader" in items
 
 
 def test_tags_keep_clear_of_what_a_drafter_wrote() -> None:

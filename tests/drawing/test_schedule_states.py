@@ -34,7 +34,6 @@ def painted(drawn: tuple[Layout, Solution]) -> Painting:
         settings=Settings(),
         plot_scale=None,
         held_places={},
-        held_texts={},
     )
 
 
@@ -187,10 +186,10 @@ def test_the_boxes_are_as_large_as_was_reckoned_and_one_part(count: int) -> None
     case = Case(spans=(even(count, 60.0),), mast=9.0, stay_run=9.0)
     layout, solution = with_states(layout_of(case), LIVE, STRONG)
     view = join_views(layout, solution, Settings(), 0.25)[0]
-    shapes = arrangements(view, "10 C", {})
+    shapes = arrangements(view, "10 C")
     assert len(shapes) >= 4
     for shape in shapes:
-        sketch = draw_schedule(view, shape, Rounder(9), {})
+        sketch = draw_schedule(view, shape, Rounder(9))
         x0, y0, x1, y1 = sketch.bounds()
         assert (x0, y1) == (0.0, 0.0)
         assert (x1, -y0) == pytest.approx((shape.width, shape.height))

@@ -112,7 +112,7 @@ def test_all_three_files_show_the_same_texts() -> None:
 
 
 def test_texts_stand_in_the_dxf_where_and_as_high_as_on_the_sheet() -> None:
-    sheet = example("ARCH-D")
+    sheet = example("ANSI-B")
     _, layout = opened(sheet)
     found = {(e.dxf.text, round(e.dxf.height * 25.4, 3)) for e in layout.query("TEXT")}
     assert found == {(t.text, round(t.height, 3)) for t in texts_of(sheet)}

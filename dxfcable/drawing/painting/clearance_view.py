@@ -105,7 +105,7 @@ def draw_clearance_row(view: View, sketch: Sketch) -> list[tuple[str, Point]]:
     if len(rows) < 2:
         return []
     at = next(item.at for item in sketch.items if isinstance(item, TextItem) and item.id == name)
-    part = Sketch(sketch.rounder, sketch.held_texts, name)
+    part = Sketch(sketch.rounder, name)
     below = (at[0], at[1] - _STEP * view.height)
     part.text(
         f"{name}/row-2",

@@ -11,8 +11,6 @@ from dxfcable.drawing.painting.force_polygon import DiagramSketch, diagram_size,
 from dxfcable.drawing.painting.joint_triangle import draw_joint, joint_size
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.rounding import Rounder
@@ -50,7 +48,6 @@ class BlockMaker:
     view: View
     plotting: Plotting
     rounder: Rounder
-    held_texts: Mapping[str, str]
 
     def free_standing(self) -> Block:
         """Draw the block at the scale that gives it a size like the elevation's."""
@@ -124,9 +121,7 @@ class BlockMaker:
         return per_length * self.plotting.on_drawing(1.0)
 
     def _block(self, per_paper: float, *, has_joints: bool) -> Block:
-        diagram = draw_force_polygon(
-            self.view, self.plotting, per_paper, self.rounder, self.held_texts
-        )
+        diagram = draw_force_polygon(self.view, self.plotting, per_paper, self.rounder)
         name = f"{self.view.prefix}/diagram"
         parts = ((name, diagram.sketch), *(self._joints(per_paper) if has_joints else ()))
         _, width, height = arranged([s for _, s in parts], BETWEEN * self.view.height)
@@ -146,9 +141,7 @@ class BlockMaker:
             own = next(self.plotting.force_scales(least))
             suits = per_paper is not None and least <= per_paper <= 2.5 * own
             scale = per_paper if suits and per_paper is not None else own
-            sketch = draw_joint(
-                view, name, anchorage, self.plotting, scale, self.rounder, self.held_texts
-            )
+            sketch = draw_joint(view, name, anchorage, self.plotting, scale, self.rounder)
             parts.append((f"{view.prefix}/joint/{name}", sketch))
         return tuple(parts)
 

@@ -186,7 +186,7 @@ def _hangers(view: View) -> Iterator[Label]:
         foot, top = (node.x, node.hanger_foot), (node.x, node.y)
         is_level = node.hanger < width + 1.6 * h and panel > width + 1.5 * h
         if is_level:
-            places = _level_beside(foot, top, width, h)
+            places = _level_beside(foot, top, width, h) + _under(foot, width, h)
         else:
             places = beside_line(foot, top, h, first_side=1) + tuple(
                 (node.x + shift * h, node.hanger_foot - 0.5 * width - step * h)
@@ -201,6 +201,15 @@ def _hangers(view: View) -> Iterator[Label]:
             rotation=0.0 if is_level else 90.0,
             target=(foot, top),
         )
+
+
+def _under(foot: Point, width: float, h: float) -> tuple[Point, ...]:
+    """List middles of a level text under an upright line."""
+    return tuple(
+        (foot[0] + slide * width, foot[1] - drop * h)
+        for drop in (0.95, 1.6, 2.3, 3.0)
+        for slide in (0.0, -0.25, 0.25)
+    )
 
 
 def _level_beside(bottom: Point, top: Point, width: float, h: float) -> tuple[Point, ...]:

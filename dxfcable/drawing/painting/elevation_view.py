@@ -71,6 +71,11 @@ class View:
         return len(self.cable.loads) > _MOST_LABELLED
 
     @property
+    def left(self) -> float:
+        """Where places along the cable count from: the left support as drawn [length]."""
+        return self.cable.supports[0].x
+
+    @property
     def load_side(self) -> int:
         """Give the side of the cable that its loads are drawn on: 1 above, -1 below."""
         nodes = [node for node in self.formed.nodes if not node.is_support]

@@ -10,6 +10,7 @@ from dxfcable.drawing.painting.label_ground import Label
 from dxfcable.drawing.painting.label_places import (
     about_point,
     beside_line,
+    further_off,
     in_space,
     readable_angle,
 )
@@ -20,7 +21,11 @@ if TYPE_CHECKING:
 
     from dxfcable.drawing.painting.arrows import ArrowPair
     from dxfcable.drawing.painting.elevation_view import View
-    from dxfcable.model import Anchorage, LoadPoint
+    from dxfcable.model import Anchorage, LoadPoint, Node, Point
+
+# Of a text in the middle of a panel over its load point, near and further off.
+_NEAR_RISES, _FAR_RISES = (0.95, 1.5, 2.1, 2.7), (3.6, 4.5, 5.4, 6.3, 7.5)
+_TALL = 1.3  # height of a line of text with its descenders, in text heights
 
 
 def force_labels(view: View, arrows: tuple[ArrowPair, ...]) -> Iterator[Label]:
@@ -108,14 +113,35 @@ def overruled_labels(view: View) -> Iterator[Label]:
     for name, node, load in zip(names, nodes, view.cable.loads, strict=True):
         if load.drawn:
             text = f"{view.wording.load(node.load)} (drawn {_drawn_words(view, load)})"
-            places = about_point((load.x, load.y), text_width(text, h), h, first_side=-1)
+            at, width = (load.x, load.y), text_width(text, h)
+            middles = [x for x in _middles(view, node) if abs(x - at[0]) < 0.5 * width + 2.5 * h]
+            near = about_point(at, width, h, first_side=-1)
+            near += tuple(_in_panels(middles, at, _NEAR_RISES, h))
+            far = tuple(_in_panels(middles, at, _FAR_RISES, h))
+            far += further_off(at, (width, _TALL * h), h)
             yield Label(
                 id=f"{view.prefix}/load/{name}",
                 layer="reaction",
                 text=text,
-                places=places,
-                target=((load.x, load.y), (load.x, load.y)),
+                places=(*near, *far),
+                target=(at, at),
+                far=len(far),
             )
+
+
+def _middles(view: View, node: Node) -> list[float]:
+    """Give the middles of both panels at a load: a long text just fits between hangers there."""
+    xs = [n.x for n in view.formed.nodes]
+    k = xs.index(node.x)
+    return [0.5 * (xs[k] + xs[k + 1]), 0.5 * (xs[k - 1] + xs[k])]
+
+
+def _in_panels(
+    middles: list[float], at: Point, rises: tuple[float, ...], h: float
+) -> Iterator[Point]:
+    """Give middles of texts over and under a load point, in the middle of a panel beside it."""
+    for rise in rises:
+        yield from ((x, at[1] + side * rise * h) for side in (1, -1) for x in middles)
 
 
 def _drawn_words(view: View, load: LoadPoint) -> str:
@@ -124,7 +150,10 @@ def _drawn_words(view: View, load: LoadPoint) -> str:
     changed = [(case, value) for case, value in drawn if used.get(case) != value]
     if len(drawn) < 2 or not changed:
         return load.drawn
-    return " ".join(f"{case}={view.wording.load(value)}" for case, value in changed)
+    unit = f" {view.wording.force_unit}"  # said once, by the value used: panels are narrow
+    return " ".join(
+        f"{case}={view.wording.load(value).removesuffix(unit)}" for case, value in changed
+    )
 
 
 def letter_labels(view: View) -> Iterator[Label]:

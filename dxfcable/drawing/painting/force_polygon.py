@@ -10,12 +10,10 @@ from dxfcable.drawing.painting.label_ground import Label, LabelGround
 from dxfcable.drawing.painting.label_places import beside_line, readable_angle
 from dxfcable.drawing.painting.label_placing import Group, put_labels
 from dxfcable.drawing.painting.labels import text_width
-from dxfcable.drawing.painting.scale_words import draw_force_scale
+from dxfcable.drawing.painting.scale_words import draw_force_scale, under_words
 from dxfcable.drawing.painting.sketch import Sketch
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.rounding import Rounder
@@ -57,7 +55,7 @@ def draw_force_polygon(
     plotting: Plotting,
     per_paper: float,
     rounder: Rounder,
-    held_texts: Mapping[str, str],
+    *_: object,  # sheeting still hands on an empty mapping
 ) -> DiagramSketch:
     """Draw the diagrams of all spans side by side, with their scales in words and as a bar.
 
@@ -71,20 +69,18 @@ def draw_force_polygon(
         Force scale: force by paper unit.
     rounder : Rounder
         Rounds coordinates about the origin.
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
     DiagramSketch
     """
     scale = plotting.force_per_length(per_paper)
-    whole = Sketch(rounder, held_texts, f"{view.prefix}/diagram")
+    whole = Sketch(rounder, f"{view.prefix}/diagram")
     spans: list[DiagramGeometry] = []
     first_ray = first_load = 1
     right = 0.0
     for number, diagram in enumerate(view.formed.diagrams, start=1):
-        drawn = _SpanDiagram(view, number, diagram, scale, rounder, held_texts)
+        drawn = _SpanDiagram(view, number, diagram, scale, rounder)
         drawn.draw(first_ray, first_load)
         left = drawn.sketch.bounds()[0]
         aside = 0.0 if number == 1 else rounder.value(right - left + _ASIDE * view.height)
@@ -101,10 +97,9 @@ def draw_force_polygon(
 
 def _words(view: View, plotting: Plotting) -> tuple[str, ...]:
     """Give the title and the state that the diagram shows."""
-    assumed = ", ASSUMED" if view.formed.level_is_assumed else ""
     return (
         f"FORCE DIAGRAM {view.formed.mark}",
-        f"UNDER {view.formed.under} ({view.formed.level.upper()}{assumed})",
+        under_words(view),
         "LOADS DOWN +, TENSION +, COMPRESSION -",
         f"FORM {plotting.words}",
     )
@@ -131,11 +126,10 @@ class _SpanDiagram:
         diagram: ForceDiagram,
         scale: float,
         rounder: Rounder,
-        held_texts: Mapping[str, str],
     ) -> None:
         self.view, self.number, self.diagram = view, number, diagram
         self.height = view.height
-        self.sketch = Sketch(rounder, held_texts, f"{view.prefix}/diagram")
+        self.sketch = Sketch(rounder, f"{view.prefix}/diagram")
         load_line = tuple(rounder.point((0.0, y / scale)) for y in diagram.load_line)
         pole = rounder.point((diagram.pole[0] / scale, diagram.pole[1] / scale))
         self.geometry = DiagramGeometry(pole=pole, load_line=load_line, rays=load_line)

@@ -9,12 +9,10 @@ from dxfcable.drawing.painting.label_ground import Label, LabelGround
 from dxfcable.drawing.painting.label_places import beside_line, readable_angle
 from dxfcable.drawing.painting.label_placing import Group, put_labels
 from dxfcable.drawing.painting.naming import unique_parts
-from dxfcable.drawing.painting.scale_words import draw_force_scale
+from dxfcable.drawing.painting.scale_words import draw_force_scale, under_words
 from dxfcable.drawing.painting.sketch import Sketch
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.rounding import Rounder
@@ -46,7 +44,7 @@ def draw_joint(
     plotting: Plotting,
     per_paper: float,
     rounder: Rounder,
-    held_texts: Mapping[str, str],
+    *_: object,  # sheeting still hands on an empty mapping
 ) -> Sketch:
     """Draw one joint's force polygon about its first corner as origin.
 
@@ -64,8 +62,6 @@ def draw_joint(
         Force scale: force by paper unit.
     rounder : Rounder
         Rounds coordinates about the origin.
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
@@ -73,7 +69,7 @@ def draw_joint(
     """
     part = f"{view.prefix}/joint/{name}"
     scale, h = plotting.force_per_length(per_paper), plotting.text_height
-    sketch = Sketch(rounder, held_texts, part)
+    sketch = Sketch(rounder, part)
     corners = [rounder.point((x / scale, y / scale)) for x, y in joint_corners(anchorage)]
     labels: list[Label] = []
     names = unique_parts([side.name for side in anchorage.sides], "side")
@@ -95,7 +91,7 @@ def draw_joint(
         )
     ground = LabelGround(h, sketch.items)
     put_labels([Group(labels=tuple(labels), sketch=sketch)], ground)
-    title = (f"JOINT {anchorage.mark}", f"UNDER {view.formed.under}", "FORCES ON THE JOINT")
+    title = (f"JOINT {anchorage.mark}", under_words(view), "FORCES ON THE JOINT")
     draw_force_scale(sketch, part, plotting, per_paper, view.wording.force_unit, title)
     return sketch
 

@@ -22,9 +22,11 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-# A place further down the list costs one. To keep clear of a drafter's line is worth going down
+# A place further down the list costs one, one far off more than any near one, so that neighbours
+# make room first, and less than any line. To keep clear of a drafter's line is worth going down
 # the whole list, of his texts and blocks more, of our own lines yet more; a label never covers
 # another one where that can be helped at all.
+FAR_OFF, _FURTHER = 260.0, 0.4
 ON_LINE = 300.0
 ON_BOX = 700.0
 ON_STROKE = 2e3
@@ -42,7 +44,7 @@ class Label:
     line or twice the same point: a leader runs to it from a label that stands off by more than
     `leader_from` text heights; None where no leader is wanted. `room` is for what is drawn
     about the text and goes with it: how far that reaches beyond the text's box, before, below,
-    behind and above it [length].
+    behind and above it [length]. The last `far` places are far off the object.
     """
 
     id: str
@@ -56,6 +58,7 @@ class Label:
     target: tuple[Point, Point] | None = None
     leader_from: float = 1.25
     room: tuple[float, float, float, float] = (0.0, 0.0, 0.0, 0.0)
+    far: int = 0
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -144,6 +147,8 @@ class LabelGround:
         low, high = turned_boxes.reaches(rows)
         low, high = np.minimum.reduceat(low, starts), np.maximum.reduceat(high, starts)
         costs = np.arange(ends[-1], dtype=np.float64) - np.repeat(starts, ends - starts)
+        for label, end in zip(labels, ends, strict=True):
+            costs[end - label.far : end] = FAR_OFF + _FURTHER * np.arange(label.far)
         for others, weight in ((self.strokes, ON_STROKE), (self.labels, ON_LABEL)):
             which, other = turned_boxes.pairs_near(low, high, *turned_boxes.reaches(others))
             costs += self._hits(rows, starts, ends, which, others[other], weight)

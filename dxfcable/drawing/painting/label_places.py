@@ -1,7 +1,7 @@
 """Lists of places for a label: beside a line, about a point, upright in narrow panels.
 
 All offsets are in text heights and such that the nearest edge of a label lies within three
-heights of its object.
+heights of its object; only places further off, where all of those are taken, do not.
 """
 
 from __future__ import annotations
@@ -20,6 +20,9 @@ _RISES = (0.95, 1.5, 2.1, 2.7, 3.3)
 _SLIDES = (0.0, -0.25, 0.25, -0.48, 0.48)
 _GAPS = (0.45, 0.9, 1.6, 2.3)
 _TOO_FAR = 1e9
+# Gaps of places further off, and slides in widths. A leader may be 15 heights long.
+_FURTHER = (3.6, 4.8, 6.0, 7.2, 8.6, 10.0, 11.5, 13.0)
+_FURTHER_SLIDES = (0.0, -0.5, 0.5, -0.25, 0.25)
 _CORNERS = (0.35, 0.8, 1.4, 2.0, 2.5)
 _TALL = 0.6  # half the height of a text with its room, in text heights
 _ASIDE_RISES = (0.0, 0.7, 1.4, 2.1, 2.8)
@@ -142,6 +145,32 @@ def about_block(at: Point, size: tuple[float, float], height: float) -> tuple[Po
     return tuple(
         (at[0] + across * height, at[1] + rise * height)
         for across, rise in _about(0.5 * size[0] / height, 0.5 * size[1] / height, _CORNERS)
+    )
+
+
+def further_off(at: Point, size: tuple[float, float], height: float) -> tuple[Point, ...]:
+    """List middles of a block over and under a point beyond three heights, near ones first.
+
+    They follow the near places where everything is drawn full there: a leader runs from them.
+
+    Parameters
+    ----------
+    at : Point
+        The point.
+    size : tuple of float
+        Width and height of the block [length].
+    height : float
+        Text height [length].
+
+    Returns
+    -------
+    tuple of Point
+    """
+    return tuple(
+        (at[0] + slide * size[0], at[1] + side * (0.5 * size[1] + gap * height))
+        for gap in _FURTHER
+        for slide in _FURTHER_SLIDES
+        for side in (1, -1)
     )
 
 

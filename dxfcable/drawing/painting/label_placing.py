@@ -8,8 +8,9 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.painting import turned_boxes
-from dxfcable.drawing.painting.label_ground import GAP, ON_LABEL, ON_LINE, ON_STROKE
+from dxfcable.drawing.painting.label_ground import FAR_OFF, GAP, ON_LABEL, ON_STROKE
 from dxfcable.drawing.painting.leaders import draw_leaders
+from dxfcable.drawing.painting.sketch import shown
 
 if TYPE_CHECKING:
     from collections.abc import Mapping, Sequence
@@ -111,7 +112,7 @@ class _Crowd:
         self.sketches: list[Sketch] = []
         for group in groups:
             free = [label for label in group.labels if label.id not in held]
-            wordings = [group.sketch.wording(label.id, label.text) for label in free]
+            wordings = [shown(label.text) for label in free]
             self.all += ground.candidates(free, wordings, group.drawn)
             self.sketches += [group.sketch] * len(free)
         self.chosen: list[int | None] = [None] * len(self.all)
@@ -132,8 +133,8 @@ class _Crowd:
                 break
         self.budget = _BUDGET
         for index, place in enumerate(self.chosen):
-            if place is not None and self.all[index].costs[place] >= ON_LINE:
-                self._make_room(index, _DEPTH, frozenset({index}), ON_LINE)
+            if place is not None and self.all[index].costs[place] >= FAR_OFF:
+                self._make_room(index, _DEPTH, frozenset({index}), FAR_OFF)
         for index, place in enumerate(self.chosen):
             if place is None:
                 self._take_room(index)
@@ -205,8 +206,9 @@ class _Crowd:
         clashes = self._clashes(index)
         counts = clashes.sum(axis=1)
         order = np.argsort(candidates.costs + 2.0 * ON_STROKE * (counts > 0), kind="stable")
+        order = order[candidates.costs[order] < limit]
         for place in order[:_TRIED]:
-            if candidates.costs[place] >= limit or counts[place] > _TOGETHER:
+            if counts[place] > _TOGETHER:
                 continue
             if counts[place] == 0:
                 self._put(index, int(place))

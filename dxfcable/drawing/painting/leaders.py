@@ -8,7 +8,6 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.drawing.painting import turned_boxes
-from dxfcable.drawing.painting.labels import text_corners
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
@@ -23,6 +22,7 @@ _LONGEST = 15.0  # a label moved further off is on its own
 _SHORT_OF = 0.12  # a leader ends this short of the text's box
 # What a leader may run over, in text heights that it would rather be longer; a text never.
 _ON_LINE, _ON_BOX, _ON_STROKE, _ON_LABEL = 1.0, 3.0, 2.0, 1e6
+_UPON, _SLANT = 12.0, 0.06  # times that for one along a line of ours, which would hide it
 _LIKELY = 0.84  # of the room kept for a text: how wide it is shown at least
 _STARTS = (
     *((u, v) for v in (-1.0, 1.0) for u in (0.0, -0.5, 0.5, -0.9, 0.9)),
@@ -39,9 +39,17 @@ def nearest_on(line: tuple[Point, Point], point: Point) -> Point:
     return ax + share * (bx - ax), ay + share * (by - ay)
 
 
-def distance(item: TextItem, line: tuple[Point, Point]) -> float:
-    """Give the least distance of a text's box from a line, both being apart [length]."""
-    corners = text_corners(item)
+def _corners(row: NDArray[np.float64]) -> list[Point]:
+    """Give the corners of a turned box, (1, 6)."""
+    x, y, cos, sin, half, rise = row[0].tolist()
+    return [
+        (x + u * half * cos - v * rise * sin, y + u * half * sin + v * rise * cos)
+        for u, v in ((-1.0, -1.0), (1.0, -1.0), (1.0, 1.0), (-1.0, 1.0))
+    ]
+
+
+def distance(corners: list[Point], line: tuple[Point, Point]) -> float:
+    """Give the least distance of a box from a line, both being apart [length]."""
     sides = [(corners[k], corners[(k + 1) % 4]) for k in range(4)]
     from_corners = min(math.dist(corner, nearest_on(line, corner)) for corner in corners)
     from_ends = min(math.dist(end, nearest_on(side, end)) for end in line for side in sides)
@@ -71,7 +79,7 @@ def draw_leaders(
     for label, item in pairs:
         if label.target is None:
             continue
-        gap = distance(item, label.target)
+        gap = distance(_corners(turned_boxes.of_whole(label, item)), label.target)
         if label.leader_from * h < gap <= _LONGEST * h:
             leaders += _draw(label, label.target, item, sketch, ground, drawn)
     ground.add(leaders)
@@ -92,9 +100,14 @@ def _draw(
     """
     h = ground.height
     own = turned_boxes.of_texts([item])
-    # A text may be narrower than the room kept for it, and a leader is to reach it.
-    likely = own.copy()
-    likely[:, 4] *= _LIKELY
+    if any(label.room):
+        # What is drawn about a text is met first.
+        likely = turned_boxes.of_whole(label, item, _LIKELY)
+        own = np.concatenate((own, turned_boxes.of_rooms(label, item)))
+    else:
+        # A text may be narrower than the room kept for it, and a leader is to reach it.
+        likely = own.copy()
+        likely[:, 4] *= _LIKELY
     x, y, cos, sin, half, rise = likely[0].tolist()
     starts = [
         (x + u * half * cos - v * rise * sin, y + u * half * sin + v * rise * cos)
@@ -114,7 +127,8 @@ def _draw(
                 )
             )
     rows = np.array(lines)
-    others = np.concatenate((ground.labels[(ground.labels != own).any(axis=1)], likely))
+    is_own = (ground.labels[:, None, :] == own[None, :, :]).all(axis=2).any(axis=1)
+    others = np.concatenate((ground.labels[~is_own], likely))
     costs = _costs(rows, ground, others, drawn) + _lengths(rows, (x, y)) / h
     best = int(np.argmin(np.round(costs, 6)))
     if costs[best] >= _ON_LABEL:
@@ -147,7 +161,9 @@ def _costs(
         bottom, top = turned_boxes.reaches(others)
         near = others[((bottom < high) & (top > low)).all(axis=1)]
         hit = turned_boxes.touching(rows[:, None, :], near[None, :, :], touch)
-        costs += weight * hit.sum(axis=1)
+        slant = np.abs(rows[:, None, 2] * near[None, :, 3] - rows[:, None, 3] * near[None, :, 2])
+        upon = np.where((slant < _SLANT) & (weight < _ON_LABEL), _UPON, 1.0)
+        costs += weight * (hit * upon).sum(axis=1)
     if drawn is not None:
         costs += drawn.burdens(rows, touch, _ON_LINE, _ON_BOX)
     return costs

@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+import math
 import re
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
+
+    from dxfcable.model import Anchorage
 
 _LONGEST = 40  # an id of several marks must stay below the 255 bytes of a DXF string
 _UNFIT = re.compile(r"[^A-Za-z0-9._+'-]")
@@ -40,3 +43,47 @@ def unique_parts(marks: Sequence[str], fallback: str) -> tuple[str, ...]:
         seen[folded] = seen.get(folded, 0) + 1
         parts.append(part if seen[folded] == 1 else f"{part}~{seen[folded]}")
     return tuple(parts)
+
+
+def anchor_feet(anchorage: Anchorage) -> tuple[str, ...]:
+    """Say for each anchor of a support which member ends there.
+
+    Parameters
+    ----------
+    anchorage : Anchorage
+        Its anchors stand at the feet of its stays and of its mast.
+
+    Returns
+    -------
+    tuple of str
+        "STAY FOOT", "STAY 2 FOOT" where there are several, "MAST BASE".
+    """
+    stays = len(anchorage.stay_feet)
+    feet = [
+        (foot, "STAY FOOT" if stays == 1 else f"STAY {number} FOOT")
+        for number, foot in enumerate(anchorage.stay_feet, start=1)
+    ]
+    feet += [(anchorage.mast_foot, "MAST BASE")] if anchorage.mast_foot else []
+    # An anchor is that of the first member at its foot, so the nearest foot is its own.
+    return tuple(
+        min(feet, key=lambda foot: math.dist(foot[0], anchor.at))[1] if feet else "ANCHOR"
+        for anchor in anchorage.anchors
+    )
+
+
+def anchor_names(anchorage: Anchorage) -> tuple[str, ...]:
+    """Name the anchors of a support so that they can be told apart.
+
+    Returns
+    -------
+    tuple of str
+        "ANCHOR A1" by the mark; without one "ANCHOR S1" by the support where it has a single
+        anchor, else by the member too: "S1 STAY FOOT", "S1 MAST BASE".
+    """
+    is_only = len(anchorage.anchors) == 1
+    return tuple(
+        f"ANCHOR {anchor.mark or anchorage.mark}".strip()
+        if anchor.mark or is_only
+        else f"{anchorage.mark} {foot}".strip()
+        for anchor, foot in zip(anchorage.anchors, anchor_feet(anchorage), strict=True)
+    )

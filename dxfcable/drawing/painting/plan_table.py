@@ -15,7 +15,7 @@ from dxfcable.pressures import format_area, format_pressure
 from dxfcable.quantities import format_force
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping, Sequence
+    from collections.abc import Sequence
 
     from dxfcable.drawing.painting.rounding import Rounder
     from dxfcable.model import Layout, PlanArea, PlanCell
@@ -32,7 +32,6 @@ def draw_list(
     unlabelled: Sequence[tuple[PlanArea, PlanCell]],
     height: float,
     rounder: Rounder,
-    held_texts: Mapping[str, str],
 ) -> Sketch:
     """Draw the list about its upper left corner as origin.
 
@@ -48,14 +47,12 @@ def draw_list(
         Of texts [length].
     rounder : Rounder
         Rounds coordinates about the origin.
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
     Sketch
     """
-    sketch = Sketch(rounder, held_texts, name)
+    sketch = Sketch(rounder, name)
     margin, top = height, -2.5 * height
     sketch.text(f"{name}/title", _LAYER, "LOADED AREAS IN PLAN", (margin, top), height)
     corner = (margin, top - 0.5 * height)

@@ -48,8 +48,8 @@ class PlanView:
         The cables, in the layout's order.
     obstacles : Obstacles
         The drafter's drawing.
-    held_places, held_texts : mapping
-        What a drafter moved or edited.
+    held_places : mapping of str to Point
+        What a drafter moved.
     items, origins, findings : list
         Painted so far, as in `Painting`.
     """
@@ -58,7 +58,6 @@ class PlanView:
     views: Sequence[View]
     obstacles: Obstacles
     held_places: Mapping[str, Point]
-    held_texts: Mapping[str, str]
     items: list[Item] = field(default_factory=list)
     origins: list[tuple[str, Point]] = field(default_factory=list)
     findings: list[Finding] = field(default_factory=list)
@@ -96,7 +95,7 @@ class PlanView:
             for name, cell in self._named(area)
         ]
         for _, name, cell in cells:
-            sketch = Sketch(rounder, self.held_texts)
+            sketch = Sketch(rounder)
             for k, ring in enumerate(cell.rings, start=1):
                 sketch.polyline(f"{name}/outline/{k}", _LAYER, ring, is_closed=True)
             self.items += sketch.items
@@ -125,9 +124,7 @@ class PlanView:
             return
         name = f"{self.views[0].prefix}/plan/list"
         rounder = self._rounder()
-        sketch = draw_list(
-            self.layout, name, self._unlabelled, self.height, rounder, self.held_texts
-        )
+        sketch = draw_list(self.layout, name, self._unlabelled, self.height, rounder)
         x0, y0, x1, y1 = sketch.bounds()
         size = (x1 - x0, y1 - y0)
         plan = self.bounds()
@@ -186,7 +183,7 @@ class PlanView:
         rounder = self._rounder()
         part = f"{name}/label"
         origin = rounder.point(self.held_places.get(part, middle))
-        sketch = Sketch(rounder, self.held_texts, part)
+        sketch = Sketch(rounder, part)
         for k, (line, at) in enumerate(
             zip(shape.lines, shape.places(self.height), strict=True), start=1
         ):

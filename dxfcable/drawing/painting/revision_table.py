@@ -14,7 +14,7 @@ from dxfcable.drawing.painting.sketch import Sketch, shown
 from dxfcable.drawing.painting.text_table import ROW, Table, draw_table
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Mapping
+    from collections.abc import Iterator
 
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.rounding import Rounder
@@ -26,9 +26,7 @@ _WIDEST = 48.0  # description, before it is broken into lines
 _COLUMNS = ("rev", "description", "date", "by")
 
 
-def draw_revisions(
-    view: View, revisions: CableRevisions, rounder: Rounder, held_texts: Mapping[str, str]
-) -> Sketch:
+def draw_revisions(view: View, revisions: CableRevisions, rounder: Rounder) -> Sketch:
     """Draw the rows of revision about their upper left corner as origin, the oldest first.
 
     Parameters
@@ -39,19 +37,17 @@ def draw_revisions(
         At least one row. More changes than get a tag are listed below the rows.
     rounder : Rounder
         Rounds coordinates about the origin.
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
     Sketch
     """
     h, name = view.height, f"{view.prefix}/revisions"
-    sketch = Sketch(rounder, held_texts, name)
+    sketch = Sketch(rounder, name)
     left, y = h, -2.5 * h
     title = f"REVISIONS OF CABLE {view.formed.mark}"
     sketch.text(f"{name}/title", LAYER, title, (left, y), h)
-    right = left + text_width(sketch.wording(f"{name}/title", title), h)
+    right = left + text_width(shown(title), h)
     edge, y = draw_table(
         sketch, f"{name}/row", _rows(revisions, h), (left, y - 0.5 * h), h, layer=LAYER
     )
@@ -99,12 +95,13 @@ def _changes(view: View, revisions: CableRevisions) -> Iterator[Table]:
         (name, (change.mark, length(change.dx), length(change.dy)))
         for name, change in zip(names, revisions.changes, strict=True)
     )
+    sign = row_sign(revisions.rows[-1])
     lots = -(-len(rows) // _MOST_ROWS)
     bounds = [len(rows) * number // lots for number in range(lots + 1)]
     for number, (start, end) in enumerate(itertools.pairwise(bounds), start=1):
         yield Table(
             columns=("mark", "dx", "dy"),
-            head=(f"MOVED BY REV {row_sign(revisions.rows[-1])}", "dx", "dy"),
+            head=(f"MOVED BY REV {sign}" if sign else "MOVED BY REVISION", "dx", "dy"),
             aligns=(Align.LEFT, Align.RIGHT, Align.RIGHT),
             rows=rows[start:end],
             part=f"-{number}" if number > 1 else "",

@@ -1,8 +1,8 @@
 """Tags of a revision: at each point that moved a triangle, and the change in words.
 
 Only what the latest revision changed is tagged, with a triangle about its letter or number
-(common practice). The words of a tag are a label as any other; triangle, letter and a second
-row go with them as one part.
+(common practice); the triangle is empty where nobody gave it any. The words of a tag are a label
+as any other; triangle, letter and a second row go with them as one part.
 """
 
 from __future__ import annotations
@@ -14,7 +14,7 @@ from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align, TextItem, VAlign
 from dxfcable.drawing.painting.label_ground import Label
-from dxfcable.drawing.painting.label_places import about_block
+from dxfcable.drawing.painting.label_places import about_block, further_off
 from dxfcable.drawing.painting.labels import ASCENT, DESCENT, text_width
 from dxfcable.drawing.painting.naming import unique_parts
 from dxfcable.drawing.painting.sketch import Sketch
@@ -46,7 +46,7 @@ class Tag:
     rows : tuple of str
         The change in words, from the lowest row up.
     sign : str
-        Letter or number in the triangle.
+        Letter or number in the triangle, or "".
     is_upright : bool
         Read from the right, since the panels are too narrow.
     """
@@ -121,12 +121,12 @@ def _gap(point: Point, one: Point, other: Point) -> float:
 
 
 def row_sign(row: RevisionRow) -> str:
-    """Give what stands in the triangle: the letter given, else the number."""
-    return row.rev.strip() or str(row.number)
+    """Give what stands in the triangle: the letter or number given, "" where none was."""
+    return row.rev.strip()
 
 
 def latest_sign(view: View) -> str:
-    """Give the letter or number of the latest revision."""
+    """Give the letter or number of the latest revision, "" where none was given."""
     return row_sign(view.revisions.rows[-1]) if view.revisions else ""
 
 
@@ -210,15 +210,18 @@ def tag_labels(view: View) -> Iterator[Label]:
             size = (size[1], size[0])
         back = (-0.5 * (tag.wide - tag.left), -tag.middle)
         places = [tag.turned(place, *back) for place in about_block(tag.at, size, h)]
+        near = [place for place in places if tag.off(place) <= _MOST_OFF * h]
+        far = [tag.turned(place, *back) for place in further_off(tag.at, size, h)]
         yield Label(
             id=tag.name,
             layer=LAYER,
             text=tag.rows[0],
-            places=tuple(place for place in places if tag.off(place) <= _MOST_OFF * h),
+            places=(*near, *far),
             rotation=90.0 * tag.is_upright,
             align=Align.LEFT,
             target=(tag.at, tag.at),
             room=room,
+            far=len(far),
         )
 
 
@@ -241,7 +244,7 @@ def draw_tags(view: View, sketch: Sketch) -> list[tuple[str, Point]]:
     words = {item.id: item for item in sketch.items if isinstance(item, TextItem)}
     placed = [(tag, words[tag.name].at) for tag in tags]
     for tag, at in placed:
-        part = Sketch(sketch.rounder, sketch.held_texts, tag.name)
+        part = Sketch(sketch.rounder, tag.name)
         _draw_tag(tag, at, part)
         sketch.items += part.items
     return [(tag.name, at) for tag, at in placed]
@@ -257,4 +260,7 @@ def _draw_tag(tag: Tag, at: Point, sketch: Sketch) -> None:
     corners = tag.triangle(at)
     sketch.polyline(f"{tag.name}/triangle", LAYER, corners, is_closed=True)
     (_, base), _, (x, _) = corners
-    sketch.text(f"{tag.name}/rev", LAYER, tag.sign, (x, base + _FOOT * h), h, align=Align.CENTER)
+    if tag.sign:
+        sketch.text(
+            f"{tag.name}/rev", LAYER, tag.sign, (x, base + _FOOT * h), h, align=Align.CENTER
+        )

@@ -45,7 +45,8 @@ def _old_labels(view: View) -> Iterator[Label]:
     now = np.array([view.node_point(k) for k in range(len(view.formed.nodes))])
     for number, points in enumerate(_old(view), start=1):
         kept = thinned(points, _FINE * h)
-        text = f"BEFORE REV {latest_sign(view)}"
+        sign = latest_sign(view)
+        text = f"BEFORE REV {sign}" if sign else "BEFORE REVISION"
         long = [
             (start, end)
             for start, end in itertools.pairwise(kept)

@@ -9,12 +9,21 @@ from dxfcable.drawing.items import Align, VAlign
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.plotting import Plotting
     from dxfcable.drawing.painting.sketch import Sketch
 
 _LAYER = "table"
 _LINE = 1.7  # from line to line, in text heights
 _DIVISIONS = {"cm": 4, "in": 2}
+
+
+def under_words(view: View) -> str:
+    """Say the state that a diagram shows: combination, level, change of temperature."""
+    formed = view.formed
+    assumed = ", ASSUMED" if formed.level_is_assumed else ""
+    change = f", {formed.delta_t:+.6g} K" if formed.delta_t else ""
+    return f"UNDER {formed.under} ({formed.level.upper()}{assumed}{change})"
 
 
 def draw_force_scale(

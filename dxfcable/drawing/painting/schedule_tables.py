@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align
-from dxfcable.drawing.painting.naming import unique_parts
+from dxfcable.drawing.painting.naming import anchor_names, unique_parts
 from dxfcable.drawing.painting.text_table import Table
 from dxfcable.model import RuleKind
 from dxfcable.recorded import CUT
@@ -38,7 +38,17 @@ def rule_words(view: View) -> str:
                 return "THROUGH A POINT"
             first = view.formed.nodes[0]
             level = wording.level(rule.point[1] + first.elevation - first.y)
-            return f"THROUGH X {wording.length(rule.point[0] - first.x)}, {level}"
+            return f"THROUGH X {wording.length(rule.point[0] - view.left)}, {level}"
+
+
+def held_rows(view: View) -> list[tuple[str, str, str]]:
+    """Say what governs: the rule, or of a cable that is cut what no load changes any more."""
+    if view.formed.status != CUT:
+        return [("rule", "RULE", rule_words(view))]
+    return [
+        ("rule", "RULE", "UNSTRESSED LENGTHS HELD"),
+        ("first", "FIRST FORMED BY", rule_words(view)),
+    ]
 
 
 def level_words(level: str, *, is_assumed: bool) -> str:
@@ -63,7 +73,7 @@ def summary_table(view: View, temperature: str) -> Table:
         weight = f"{wording.weight(formed.weight)}{case}"
     rows: list[tuple[str, str, str]] = [
         ("status", "STATUS", formed.status.upper()),
-        ("rule", "RULE", rule_words(view)),
+        *held_rows(view),
         ("under", "UNDER", formed.under),
         ("level", "LEVEL", level),
         *_pulls(view),
@@ -83,9 +93,7 @@ def summary_table(view: View, temperature: str) -> Table:
             "HELD RIGID" if formed.supports_rigid else "MOVE WITH THEIR STAYS",
         ),
     ]
-    first = formed.nodes[0].mark or "LEFT"
-    datum = "DATUM OF EL" if wording.has_datum else f"DIFFERENCES FROM {first}"
-    rows.append(("elevations", "ELEVATIONS", datum))
+    rows.append(("elevations", "ELEVATIONS", _levels_words(view)))
     if view.cable.strand:
         rows.append(("strand", "STRAND", view.cable.strand))
     if formed.capacity is not None:
@@ -105,6 +113,15 @@ def summary_table(view: View, temperature: str) -> Table:
         rows=tuple((key, (name, value)) for key, name, value in rows),
         title=cut_words(view),
     )
+
+
+def _levels_words(view: View) -> str:
+    """Say what heights count from; a support that gave way shows its own movement so."""
+    if view.wording.has_datum:
+        return "DATUM OF EL"
+    first, drawn = view.formed.nodes[0], view.cable.supports[0]
+    is_moved = (first.x, first.y) != (drawn.x, drawn.y)
+    return f"DIFFERENCES FROM {first.mark or 'LEFT'}{' AS DRAWN' if is_moved else ''}"
 
 
 def _pulls(view: View) -> list[tuple[str, str, str]]:
@@ -149,8 +166,9 @@ def _anchorage_rows(view: View, name: str, anchorage: Anchorage) -> list[tuple[s
         x, y = anchorage.residual
         rows.append((f"{name}-residual", f"{mark} NOT HELD X, Y", f"{force(x)}, {force(y)}"))
     parts = unique_parts([anchor.mark for anchor in anchorage.anchors], "anchor")
-    for part, anchor in zip(parts, anchorage.anchors, strict=True):
-        key, word = f"{name}-{part}", f"ANCHOR {anchor.mark or mark}"
+    words = anchor_names(anchorage)
+    for part, word, anchor in zip(parts, words, anchorage.anchors, strict=True):
+        key = f"{name}-{part}"
         both = f"H {force(anchor.horizontal)}, UPLIFT {force(anchor.uplift)}"
         rows.append((key, word, both))
         factors = (("SLIDING", anchor.sliding_factor), ("UPLIFT", anchor.uplift_factor))
@@ -167,7 +185,7 @@ def point_table(view: View) -> Table:
     for name, node in zip(view.node_names, nodes, strict=True):
         cells = (
             node.mark,
-            wording.length(node.x - nodes[0].x),
+            wording.length(node.x - view.left),
             wording.level(node.elevation),
             "" if node.is_support else wording.load(node.load),
             "" if node.hanger is None else wording.length(node.hanger),

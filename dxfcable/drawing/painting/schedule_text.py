@@ -13,8 +13,6 @@ from dxfcable.drawing.painting.state_tables import state_tables, states_title
 from dxfcable.drawing.painting.text_table import ROW, Table, draw_table, table_size
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.painting.rounding import Rounder
     from dxfcable.model import Point
@@ -60,7 +58,7 @@ class Arrangement:
     height: float
 
 
-def arrangements(view: View, temperature: str, held_texts: Mapping[str, str]) -> list[Arrangement]:
+def arrangements(view: View, temperature: str) -> list[Arrangement]:
     """Give the shapes that a cable's schedule may take, the usual ones first.
 
     Parameters
@@ -69,14 +67,12 @@ def arrangements(view: View, temperature: str, held_texts: Mapping[str, str]) ->
         The cable.
     temperature : str
         Reference temperature to print, or "".
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
     list of Arrangement
     """
-    measure = _Measure(view.height, held_texts)
+    measure = _Measure(view.height)
     name, title = f"{view.prefix}/schedule", f"CABLE {view.formed.mark}"
     own = [measure.box(name, title, columns) for columns in _shapes(view, temperature)]
     if not view.formed.states:
@@ -123,8 +119,8 @@ def _together(*boxes: tuple[Box, Point]) -> Arrangement:
 class _Measure:
     """Measures boxes; a table is measured once, however many boxes it stands in."""
 
-    def __init__(self, height: float, held_texts: Mapping[str, str]) -> None:
-        self.height, self.held_texts = height, held_texts
+    def __init__(self, height: float) -> None:
+        self.height = height
         self._known: dict[tuple[str, str, int], tuple[float, float]] = {}
 
     def box(self, name: str, title: str, columns: _Columns) -> Box:
@@ -137,7 +133,7 @@ class _Measure:
             sum(high for _, high in column) + _UNDER * h * (len(column) - 1) for column in measured
         )
         lines = broken(CAUTION, width, h)
-        shown_title = shown(self.held_texts.get(f"{name}/title", title))
+        shown_title = shown(title)
         width = max(width, *(text_width(line, h) for line in (*lines, shown_title))) + 2.0 * h
         height += (4.0 + ROW * len(lines)) * h
         return Box(name=name, title=title, columns=columns, width=width, height=height)
@@ -145,7 +141,7 @@ class _Measure:
     def _size(self, name: str, table: Table) -> tuple[float, float]:
         known = (name, table.part, len(table.rows))
         if known not in self._known:
-            self._known[known] = table_size(name, table, self.height, self.held_texts)
+            self._known[known] = table_size(table, self.height)
         return self._known[known]
 
 
@@ -195,9 +191,7 @@ def _split(key: str, table: Table, lots: int) -> list[tuple[str, Table]]:
     ]
 
 
-def draw_schedule(
-    view: View, arrangement: Arrangement, rounder: Rounder, held_texts: Mapping[str, str]
-) -> Sketch:
+def draw_schedule(view: View, arrangement: Arrangement, rounder: Rounder) -> Sketch:
     """Draw the schedule about its upper left corner as origin; all of it is one part.
 
     Parameters
@@ -208,14 +202,12 @@ def draw_schedule(
         Its tables and how they stand.
     rounder : Rounder
         Rounds coordinates about the origin.
-    held_texts : mapping of str to str
-        Texts that a drafter put in place of ours.
 
     Returns
     -------
     Sketch
     """
-    sketch = Sketch(rounder, held_texts, f"{view.prefix}/schedule")
+    sketch = Sketch(rounder, f"{view.prefix}/schedule")
     for box, corner in arrangement.boxes:
         _draw_box(sketch, box, corner, view.height)
     return sketch

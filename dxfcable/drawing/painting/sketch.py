@@ -23,7 +23,7 @@ from dxfcable.drawing.painting import turned_boxes
 from dxfcable.drawing.painting.labels import text_corners
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Mapping, Sequence
+    from collections.abc import Iterable, Sequence
 
     from numpy.typing import NDArray
 
@@ -40,15 +40,12 @@ class Sketch:
     ----------
     rounder : Rounder
         Rounds every coordinate that goes in.
-    held_texts : mapping of str to str
-        Id to the text that a drafter put in place of ours.
     part : str
         Part of every item, or "" where each item is its own part.
     """
 
-    def __init__(self, rounder: Rounder, held_texts: Mapping[str, str], part: str = "") -> None:
+    def __init__(self, rounder: Rounder, part: str = "") -> None:
         self.rounder = rounder
-        self.held_texts = held_texts
         self.part = part
         self.items: list[Item] = []
 
@@ -113,10 +110,6 @@ class Sketch:
                 )
             )
 
-    def wording(self, name: str, text: str) -> str:
-        """Give the text that an item will show: the drafter's where held, ASCII always."""
-        return shown(self.held_texts.get(name, text))
-
     def text(
         self,
         name: str,
@@ -134,7 +127,7 @@ class Sketch:
             id=name,
             layer=layer,
             part=self.part or name,
-            text=self.wording(name, text),
+            text=shown(text),
             at=self.rounder.point(at),
             height=self.rounder.value(height),
             rotation=round(rotation, 9) + 0.0,

@@ -6,7 +6,7 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.items import Align
-from dxfcable.drawing.painting.naming import unique_parts
+from dxfcable.drawing.painting.naming import anchor_names, unique_parts
 from dxfcable.drawing.painting.schedule_tables import cut_words, level_words
 from dxfcable.drawing.painting.text_table import Table
 
@@ -231,9 +231,10 @@ def _member_cells(anchorages: Sequence[Anchorage]) -> list[tuple[str, str, float
         for k, stay in enumerate(joint.stays, start=1):
             word = "STAY" if len(joint.stays) == 1 else f"STAY {k}"
             found.append((f"stay-{name}-{k}", f"{joint.mark} {word}", stay))
-        for k, anchor in enumerate(joint.anchors, start=1):
-            word = f"{anchor.mark or joint.mark} UPLIFT"
-            found.append((f"uplift-{name}-{k}", word, anchor.uplift))
+        words = anchor_names(joint)
+        for k, (word, anchor) in enumerate(zip(words, joint.anchors, strict=True), start=1):
+            head = f"{word.removeprefix('ANCHOR ')} UPLIFT"
+            found.append((f"uplift-{name}-{k}", head, anchor.uplift))
     return found
 
 

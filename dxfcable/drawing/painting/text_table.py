@@ -10,8 +10,6 @@ from dxfcable.drawing.painting.labels import text_width
 from dxfcable.drawing.painting.sketch import shown
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
-
     from dxfcable.drawing.painting.sketch import Sketch
     from dxfcable.model import Point
 
@@ -43,28 +41,23 @@ def _lines(table: Table) -> list[tuple[str, tuple[str, ...]]]:
     return [*head, *table.rows]
 
 
-def _widths(name: str, table: Table, height: float, held_texts: Mapping[str, str]) -> list[float]:
+def _widths(table: Table, height: float) -> list[float]:
     """Give the widths of the columns, as wide as their texts may be."""
     widths = []
-    for index, column in enumerate(table.columns):
-        texts = [
-            shown(held_texts.get(f"{name}/{key}/{column}", cells[index]))
-            for key, cells in _lines(table)
-        ]
+    for index in range(len(table.columns)):
+        texts = [shown(cells[index]) for _, cells in _lines(table)]
         widths.append(max((text_width(text, height) for text in texts), default=0.0))
     if table.title:
         # The last column gives way to a title that is wider than all of them.
-        title = shown(held_texts.get(f"{name}/title{table.part}", table.title))
+        title = shown(table.title)
         taken = sum(widths) + _GUTTER * height * (len(widths) - 1)
         widths[-1] += max(0.0, text_width(title, height) - taken)
     return widths
 
 
-def table_size(
-    name: str, table: Table, height: float, held_texts: Mapping[str, str]
-) -> tuple[float, float]:
+def table_size(table: Table, height: float) -> tuple[float, float]:
     """Give width and height of a table as `draw_table` draws it [length]."""
-    widths = _widths(name, table, height, held_texts)
+    widths = _widths(table, height)
     rise = ROW * (len(_lines(table)) + bool(table.title)) + _FOOT
     rise += _HEAD if any(table.head) else 0.0
     return sum(widths) + _GUTTER * height * (len(widths) - 1), rise * height
@@ -103,7 +96,7 @@ def draw_table(
     """
     lines = _lines(table)
     edges = [top_left[0]]
-    for width in _widths(name, table, height, sketch.held_texts):
+    for width in _widths(table, height):
         edges.append(edges[-1] + width + _GUTTER * height)
     right = edges[-1] - _GUTTER * height
     y = top_left[1]

@@ -65,6 +65,18 @@ def of_places(label: Label, wording: str, height: float) -> Floats:
     return _turned(box, np.array(label.places), np.radians(np.array([label.rotation])))
 
 
+def of_whole(label: Label, item: TextItem, share: float = 1.0) -> Floats:
+    """Give the row of a text and all that is drawn about it, (1, 6).
+
+    `share` is how much of the room kept along the text counts.
+    """
+    x0, y0, x1, y1 = text_box(item.text, item.height, item.align, item.valign)
+    before, below, behind, above = label.room
+    right = x0 + share * (x1 + behind - x0)
+    box = np.array([(x0 - before, y0 - below, right, y1 + above)])
+    return _turned(box, np.array([item.at]), np.radians(np.array([item.rotation])))
+
+
 def of_rooms(label: Label, item: TextItem) -> Floats:
     """Give the rows of what is drawn about a label's text: before, below, behind and above it."""
     x0, y0, x1, y1 = text_box(item.text, item.height, item.align, item.valign)

@@ -42,7 +42,7 @@ def join_views(
             force_unit=layout.force_unit or "",
             digits=settings.show.force_digits,
             has_datum=cable.datum is not None,
-            reference=formed.nodes[0].elevation,
+            reference=cable.supports[0].y,
         )
         views.append(
             View(

@@ -22,7 +22,7 @@ class Wording:
     has_datum : bool
         Elevations are those of a datum; else heights are differences from `reference`.
     reference : float
-        Ordinate of the left support [length].
+        Ordinate of the left support as drawn [length].
     """
 
     length_unit: str

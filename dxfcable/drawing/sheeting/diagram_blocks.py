@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+import itertools
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.painting.force_polygon import diagram_size, draw_force_polygon
 from dxfcable.drawing.painting.joint_triangle import draw_joint, joint_size
 from dxfcable.drawing.painting.sketch import Sketch
+from dxfcable.drawing.sheeting.blocks import Drawing
 from dxfcable.drawing.sheeting.diagram_rows import in_rows
 from dxfcable.drawing.sheeting.load_line_letters import has_clash, sparse, spread_letters
 from dxfcable.drawing.sheeting.paper_view import ROUNDER, on_paper, plotting_of, scale_words
@@ -22,14 +24,17 @@ from dxfcable.drawing.sheeting.titles import (
 )
 
 if TYPE_CHECKING:
+    from collections.abc import Iterator
+
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.sheeting.papers import Paper
     from dxfcable.model import Anchorage
 
+MOST_DIAGRAM = 120.0  # text heights that a diagram of one span measures at most
 _LEGIBLE, _LEGIBLE_SPAN = 12.0, 6.0  # text heights at least: of one diagram, of one of several
 _JOINT = 26.0  # text heights that a joint's polygon may measure
 _WORDS = ("/words/", "/scale-bar")
-_TRIED = 9  # usual scales, one after the other
+_TRIED = 10  # usual scales, one after the other
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -48,10 +53,11 @@ class DiagramMaker:
     view: View
     paper: Paper
     form_scale: float
-    _drawn: dict[tuple[float, float], Sketch] = field(default_factory=dict)
+    _side_by_side: dict[float, Sketch] = field(default_factory=dict)
+    _drawn: dict[tuple[float, float], Drawing] = field(default_factory=dict)
 
-    def fitting(self, width: float, height: float, most: float) -> tuple[Sketch, float] | None:
-        """Draw the force diagram at the finest usual scale that fits; None if too small.
+    def scales(self, width: float, height: float, most: float) -> Iterator[tuple[float, float]]:
+        """List usual scales by which the bare diagrams may fit a room, the finest first.
 
         Parameters
         ----------
@@ -60,47 +66,64 @@ class DiagramMaker:
         most : float
             What the diagram of one span may measure [mm].
 
-        Returns
-        -------
-        tuple of (Sketch, float) or None
-            With its scale: force by paper unit.
+        Yields
+        ------
+        tuple of float
+            Force by paper unit; the larger measure of the largest diagram [mm], legible.
         """
-        view = self._paper_view()
         plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
-        sizes = [diagram_size(diagram) for diagram in view.formed.diagrams]
+        sizes = [diagram_size(diagram) for diagram in self.view.formed.diagrams]
+        legible = (_LEGIBLE if len(sizes) == 1 else _LEGIBLE_SPAN) * self.paper.text
         wide, high = max(w for w, _ in sizes), max(h for _, h in sizes)
-        legible = _LEGIBLE if len(sizes) == 1 else _LEGIBLE_SPAN
         room = min(width, most), min(height, most)
         least = max(wide / room[0], high / room[1]) * plotting.on_drawing(1.0)
-        for tried, per_paper in enumerate(plotting.force_scales(least)):
+        for per_paper in itertools.islice(plotting.force_scales(least), _TRIED):
             size = max(wide, high) / plotting.force_per_length(per_paper)
-            if size < legible * self.paper.text or tried > _TRIED:
-                return None
-            key = (per_paper, width if len(sizes) > 1 else 0.0)
-            if key not in self._drawn:  # of one span the same for every room
-                self._drawn[key] = self._diagram(view, per_paper, width)
-            sketch = self._drawn[key]
-            a, b, c, d = sketch.bounds()
-            if c - a <= width + 1e-6 and d - b <= height + 1e-6:
-                return sketch, per_paper
+            if size < legible:
+                return
+            yield per_paper, size
+
+    def drawn(self, per_paper: float, width: float) -> Drawing:
+        """Draw the force diagram at a scale, those of a chain in rows of some width [mm]."""
+        key = (per_paper, width if len(self.view.formed.diagrams) > 1 else 0.0)
+        if key not in self._drawn:  # of one span the same for every room
+            sketch = self._diagram(self._paper_view(), per_paper, width)
+            self._drawn[key] = Drawing(sketch=sketch)
+        return self._drawn[key]
+
+    def fitting(self, width: float, height: float, most: float) -> Drawing | None:
+        """Draw the force diagram at the finest usual scale that fits; None if too small."""
+        for per_paper, _ in self.scales(width, height, most):
+            drawn = self.drawn(per_paper, width)
+            wide, high = drawn.size
+            if wide <= width + 1e-6 and high <= height + 1e-6:
+                return drawn
         return None
 
     def _paper_view(self) -> View:
         return on_paper(self.view, self.form_scale, self.paper.text)
 
-    def _diagram(self, view: View, per_paper: float, width: float) -> Sketch:
-        """Draw the diagrams of all spans in rows of some width, their title and their bar."""
+    def _polygons(self, view: View, per_paper: float) -> Sketch:
+        """Draw the diagrams of all spans side by side, once for each scale."""
+        if per_paper in self._side_by_side:
+            return self._side_by_side[per_paper]
         plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
-        drawn = draw_force_polygon(view, plotting, per_paper, ROUNDER, {})
-        sketch = Sketch(ROUNDER, {})
+        drawn = draw_force_polygon(view, plotting, per_paper, ROUNDER)
+        sketch = Sketch(ROUNDER)
         sketch.items = [i for i in drawn.sketch.items if not any(w in i.id for w in _WORDS)]
         if view.is_dense or has_clash(sketch.items):
             # Short loads: their letters in a column of their own; the values stand in the strip.
-            few = draw_force_polygon(sparse(view), plotting, per_paper, ROUNDER, {})
+            few = draw_force_polygon(sparse(view), plotting, per_paper, ROUNDER)
             sketch.items = [i for i in few.sketch.items if not any(w in i.id for w in _WORDS)]
             if len(view.formed.diagrams) == 1:
                 spread_letters(sketch, view, few)
-        sketch.items = in_rows(sketch, view, width)
+        self._side_by_side[per_paper] = sketch
+        return sketch
+
+    def _diagram(self, view: View, per_paper: float, width: float) -> Sketch:
+        """Draw the diagrams of all spans in rows of some width, their title and their bar."""
+        sketch = Sketch(ROUNDER)
+        sketch.items = list(in_rows(self._polygons(view, per_paper), view, width))
         formed = view.formed
         assumed = ", ASSUMED" if formed.level_is_assumed else ""
         lines = (
@@ -147,8 +170,8 @@ class DiagramMaker:
         """Draw one joint."""
         view = self._paper_view()
         plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
-        drawn = draw_joint(view, name, anchorage, plotting, per_paper, ROUNDER, {})
-        sketch = Sketch(ROUNDER, {})
+        drawn = draw_joint(view, name, anchorage, plotting, per_paper, ROUNDER)
+        sketch = Sketch(ROUNDER)
         sketch.items = [i for i in drawn.items if not any(w in i.id for w in _WORDS)]
         lines = (
             force_scale_words(per_paper, view.wording.force_unit, is_inch=self.paper.is_inch),

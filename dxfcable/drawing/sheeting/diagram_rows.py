@@ -37,7 +37,7 @@ def in_rows(sketch: Sketch, view: View, width: float) -> list[Item]:
     items: list[Item] = []
     x, top, low = 0.0, 0.0, 0.0
     for part in parts:
-        alone = Sketch(ROUNDER, {})
+        alone = Sketch(ROUNDER)
         alone.items = part
         a, b, c, d = alone.bounds()
         if x > 0.0 and x + (c - a) > width:

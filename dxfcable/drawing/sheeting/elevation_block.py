@@ -41,6 +41,8 @@ from dxfcable.drawing.sheeting.titles import (
 )
 
 if TYPE_CHECKING:
+    from collections.abc import Iterator, Sequence
+
     from dxfcable.drawing.painting.elevation_view import View
     from dxfcable.drawing.sheeting.papers import Paper
     from dxfcable.model import CableRevisions, Point
@@ -90,34 +92,38 @@ class ElevationMaker:
     revisions: CableRevisions | None = None
     _drawn: dict[tuple[float, bool], ElevationBlock] = field(default_factory=dict)
 
-    def fitting(
-        self, width: float, height: float, wanted: float | None = None
-    ) -> ElevationBlock | None:
-        """Draw at the finest usual scale that fits a room; None where nothing legible does.
+    def fittings(
+        self, rooms: Sequence[tuple[float, float]], wanted: float | None = None
+    ) -> Iterator[ElevationBlock]:
+        """Draw at each usual scale that fits one of some rooms and is legible, the finest first.
 
         Parameters
         ----------
-        width, height : float
-            Of the room [mm].
+        rooms : sequence of (float, float)
+            Widths and heights [mm].
         wanted : float, optional
             A scale to try first; coarser usual ones follow.
+
+        Yields
+        ------
+        ElevationBlock
+            Of one scale with the full strip before the one with the short strip.
         """
         unit = self.view.wording.length_unit
         scales = list(usual_scales(unit))
         if wanted is not None:
             scales = [wanted, *(s for s in scales if s > wanted)]
         for scale in scales:
-            if not self._may_fit(scale, width):
+            if not any(self._may_fit(scale, width) for width, _ in rooms):
                 continue
             paper_view = on_paper(self.view, scale, self.paper.text)
             nodes = paper_view.formed.nodes
             if (nodes[-1].x - nodes[0].x) < _LEAST_SPAN * self.paper.text:
-                return None
+                return
             for is_short in (False, True):
-                block = self._block(paper_view, scale, (width, height), is_short=is_short)
+                block = self._block(paper_view, scale, rooms, is_short=is_short)
                 if block is not None:
-                    return block
-        return None
+                    yield block
 
     def _may_fit(self, scale: float, width: float) -> bool:
         """Tell by the bare extent whether drawing is worth while."""
@@ -126,20 +132,26 @@ class ElevationMaker:
         return (x1 - x0) * factor <= width
 
     def _block(
-        self, view: View, scale: float, room: tuple[float, float], *, is_short: bool
+        self,
+        view: View,
+        scale: float,
+        rooms: Sequence[tuple[float, float]],
+        *,
+        is_short: bool,
     ) -> ElevationBlock | None:
         """Draw at a scale; None where it does not fit."""
         strip = self._strip(view, is_short=is_short)
         _, title_rise = title_size(self.paper, self._title(view), self._words(view, scale))
         below = title_rise + (strip.rise if strip.is_possible else 0.0)
         _, y0, _, y1 = extent(view)
-        if (y1 - y0) + below + (_ABOVE + _BELOW_CABLE) * view.height > room[1]:
+        least = (y1 - y0) + below + (_ABOVE + _BELOW_CABLE) * view.height
+        if all(least > height for _, height in rooms):
             return None
         key = (scale, is_short)
         if key not in self._drawn:  # the same for every room
             self._drawn[key] = self._draw(view, scale, strip, is_short=is_short)
         a, b, c, d = self._drawn[key].sketch.bounds()
-        fits = c - a <= room[0] + 1e-6 and d - b <= room[1] + 1e-6
+        fits = any(c - a <= width + 1e-6 and d - b <= height + 1e-6 for width, height in rooms)
         return self._drawn[key] if fits else None
 
     def _strip(self, view: View, *, is_short: bool) -> PointStrip:
@@ -149,7 +161,7 @@ class ElevationMaker:
         self, view: View, scale: float, strip: PointStrip, *, is_short: bool
     ) -> ElevationBlock:
         """Draw the view, its strip and its title."""
-        sketch = Sketch(ROUNDER, {})
+        sketch = Sketch(ROUNDER)
         old = self._old_profile(view, scale)
         _draw_view(view, sketch, old, with_tensions=_labels_every_piece(view))
         x0, bottom, _, _ = sketch.bounds()

@@ -185,7 +185,6 @@ def _node_texts(view: View, *, is_short: bool) -> list[tuple[str, str, tuple[str
     wording, nodes = view.wording, view.formed.nodes
     unit = wording.length_unit
     first = nodes[0].mark or "LEFT"
-    loads = iter(view.cable.loads)
     rows = [("mark", "POINT", [brief(node.mark) for node in nodes])]
     if not is_short:
         bare = wording.length(0.0).endswith(f" {unit}")
@@ -201,18 +200,46 @@ def _node_texts(view: View, *, is_short: bool) -> list[tuple[str, str, tuple[str
             ]
             rows.append(("hanger", f"HANGER{f', {unit}' if bare else ''}", hangers))
     values = [
-        "" if node.is_support else _load_words(view, node.load, next(loads)) for node in nodes
+        "" if node.is_support else wording.load(node.load).removesuffix(f" {wording.force_unit}")
+        for node in nodes
     ]
     case = "" if view.formed.under == UNCASED else f" {brief(view.formed.under)}"
     rows.append(("load", f"LOAD{case}, {wording.force_unit}", values))
+    rows += drawn_row(view)
     return [(key, head, tuple(texts)) for key, head, texts in rows]
 
 
-def _load_words(view: View, value: float, load: LoadPoint) -> str:
-    """Write a load, and what is drawn in its place."""
+def drawn_row(view: View) -> list[tuple[str, str, list[str]]]:
+    """Give the row of what is drawn where the loads used are others; none where all are as drawn.
+
+    Of several cases only those that are others now are told, a sole one in the row's head.
+    """
     unit = view.wording.force_unit
-    words = view.wording.load(value).removesuffix(f" {unit}")
-    return f"{words} (drawn {brief(load.drawn)})" if load.drawn else words
+    changed = [_changed(load) for load in view.cable.loads]
+    cases = {case for found in changed for case, _ in found}
+    sole = next(iter(cases)) if len(cases) == 1 else None
+    words = []
+    for load, found in zip(view.cable.loads, changed, strict=True):
+        values = [(c, view.wording.load(v).removesuffix(f" {unit}")) for c, v in found]
+        told = [value if sole == case else f"{case}={value}" for case, value in values]
+        words.append(" ".join(told) or brief(load.drawn))
+    if not any(words):
+        return []
+    # Words of the drafter that are no values of ours have units of their own.
+    pairs = zip(changed, view.cable.loads, strict=True)
+    is_plain = all(found or not load.drawn for found, load in pairs)
+    of = "" if sole in (None, UNCASED) else f" {brief(sole)}"
+    rest = iter(words)
+    texts = ["" if node.is_support else next(rest) for node in view.formed.nodes]
+    return [("drawn", f"DRAWN{of}{f', {unit}' if is_plain else ''}", texts)]
+
+
+def _changed(load: LoadPoint) -> list[tuple[str, float]]:
+    """List the cases that the drawing states otherwise."""
+    if not load.drawn:
+        return []
+    used = dict(load.cases)
+    return [(case, value) for case, value in load.drawn_cases or () if used.get(case) != value]
 
 
 def _piece_texts(view: View) -> list[tuple[str, str, tuple[str, ...]]]:

@@ -119,6 +119,11 @@ class RuledTable:
         return width, self._title_rise + self._rise(0) + rows
 
     @property
+    def area(self) -> float:
+        """Area with the title [mm2]."""
+        return self.size[0] * self.size[1]
+
+    @property
     def _title_rise(self) -> float:
         return 2.1 * self.height
 
@@ -209,6 +214,6 @@ def _pieces(word: str, width: float, height: float) -> Sequence[str]:
 
 def table_sketch(table: RuledTable, top_left: Point = (0.0, 0.0)) -> Sketch:
     """Draw a table on a sketch of its own."""
-    sketch = Sketch(ROUNDER, {})
+    sketch = Sketch(ROUNDER)
     table.draw(sketch, top_left)
     return sketch

@@ -8,7 +8,6 @@ from typing import TYPE_CHECKING
 from dxfcable.drawing.items import Align
 from dxfcable.drawing.painting.schedule_tables import (
     point_table,
-    rule_words,
     segment_table,
     summary_table,
 )
@@ -26,6 +25,7 @@ if TYPE_CHECKING:
 # What a fabricator is told on the sheet and the drawing does not say: fields to fill.
 _TO_FILL = ("SPECIFICATION, COATING", "PRESTRETCH", "LENGTH TOLERANCE")
 _FITTINGS = "END FITTINGS"
+_NOISE = 1e-11  # of the largest reaction: rounding of a sum
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -75,7 +75,7 @@ def schedule(
 def cable_schedules(
     view: View, temperature: str, more: Fabrication, *, has_places: bool
 ) -> list[Schedule]:
-    """List the schedules of one cable as formed.
+    """List the schedules of one cable as formed, in the order that they are read in.
 
     Parameters
     ----------
@@ -92,7 +92,7 @@ def cable_schedules(
     hangs_all = all(node.is_support or node.hanger is not None for node in view.formed.nodes)
     if not has_places and not hangs_all:  # a hanger schedule says the same and more
         found.append(_points(view))
-    found += [*_spans(view), *_cases(view), _pieces(view), *_hangers(view, more)]
+    found += [*_spans(view), _pieces(view), *_hangers(view, more)]
     found.append(
         schedule(
             "reactions",
@@ -105,6 +105,7 @@ def cable_schedules(
         title = f"MASTS, STAYS AND ANCHORS, ALL CABLES AT THEM, {under_words(view)}"
         rows = anchorage_rows(view, [a for _, a in view.anchorages])
         found.append(schedule("anchorages", title, ANCHORAGE_HEAD, rows, lefts=(0, 1)))
+    found += _cases(view)
     return found
 
 
@@ -116,7 +117,6 @@ def _cable(view: View, temperature: str, more: Fabrication) -> Schedule:
     said = {"under": ("UNDER", under_words(view).removeprefix("UNDER "))}
     if formed.status == CUT:
         said["rule"] = ("HELD", held_words(view))
-        table = replace(table, rows=(*table.rows, ("first", ("FIRST FORMED BY", rule_words(view)))))
     rows = [("MARK", formed.mark), *(said.get(key, cells) for key, cells in table.rows)]
     total = sum(node.load for node in formed.nodes)
     rows.append(("SUM OF POINT LOADS", wording.load(total)))
@@ -226,8 +226,12 @@ def change_schedules(view: View, revisions: CableRevisions | None) -> list[Sched
 
 
 def reaction_rows(view: View, reactions: Sequence[Reaction]) -> list[tuple[str, ...]]:
-    """Give the rows of reactions."""
-    force = view.wording.force
+    """Give the rows of reactions; what is left of a sum that is nothing is told as nothing."""
+    noise = _NOISE * max((abs(v) for r in reactions for v in (r.horizontal, r.vertical)), default=0)
+
+    def force(value: float) -> str:
+        return view.wording.force(value if abs(value) > noise else 0.0)
+
     return [(r.mark, force(r.horizontal), force(r.vertical)) for r in reactions]
 
 

@@ -4,7 +4,12 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from dxfcable.drawing.sheeting.schedules import ANCHORAGE_HEAD, anchorage_rows, schedule
+from dxfcable.drawing.sheeting.schedules import (
+    ANCHORAGE_HEAD,
+    anchorage_rows,
+    reaction_rows,
+    schedule,
+)
 
 if TYPE_CHECKING:
     from dxfcable.drawing.painting.elevation_view import View
@@ -64,13 +69,12 @@ def _combinations(view: View) -> Schedule:
 
 def _reactions(view: View) -> list[Schedule]:
     """Give H and V at each support under each combination."""
-    force = view.wording.force
     marks = [r.mark for r in view.formed.reactions]
     rows = [
         (
             _name(state),
             level_words(state),
-            *(force(v) for r in state.reactions for v in (r.horizontal, r.vertical)),
+            *(words for row in reaction_rows(view, state.reactions) for words in row[1:]),
         )
         for state in view.formed.states
         if state.reactions

@@ -52,7 +52,7 @@ def notes_sketches(notes: Sequence[str], width: float, height: float, h: float) 
         lines = wrapped(note, width - _NUMBER * h, h)
         rise = (_BETWEEN + _LINE * len(lines)) * h
         if y - rise < -height + h or not blocks:
-            blocks.append(Sketch(ROUNDER, {}))
+            blocks.append(Sketch(ROUNDER))
             title = f"NOTES{CONTINUED if number > 1 else ''}"
             y = -1.2 * h
             blocks[-1].text(f"notes/title-{number}", "note", title, (0.0, y), h)
@@ -83,7 +83,7 @@ def legend_sketch(
     views: Sequence[View], revisions: Sequence[CableRevisions], width: float, h: float
 ) -> Sketch:
     """Draw the legend of signs about its upper left corner: what stands on this sheet."""
-    sketch = Sketch(ROUNDER, {})
+    sketch = Sketch(ROUNDER)
     sketch.text("legend/title", "note", "LEGEND OF SIGNS", (0.0, -1.2 * h), h)
     y = -1.2 * h
     indent = (_SAMPLE + 1.5) * h
