@@ -154,7 +154,7 @@ def test_a_cut_cable_says_that_its_lengths_are_held(tmp_path: Path) -> None:
 
 @pytest.mark.usefixtures("light")
 def test_several_drawings_make_one_set_in_the_order_of_their_names(tmp_path: Path) -> None:
-    names = [f"span-{letter}" for letter in "dcba"]
+    names = [f"span-{letter}" for letter in "cba"]
     drawings = [
         small(tmp_path / f"{name}.dxf", f"{k + 9} kN", "15 kN") for k, name in enumerate(names)
     ]
@@ -162,7 +162,7 @@ def test_several_drawings_make_one_set_in_the_order_of_their_names(tmp_path: Pat
     assert run(*drawings, "-d", folder, "--size", "A3")[0] == 0
     rows = index_of(folder)
     assert [r["drawing"] for r in rows] == sorted(names)
-    assert [r["number"] for r in rows] == [f"FD-{k:03d}" for k in range(1, 5)]
+    assert [r["number"] for r in rows] == [f"FD-{k:03d}" for k in range(1, 4)]
     pages = sum(int(r["sheets"]) for r in rows)
     whole = pypdfium2.PdfDocument((folder / "set.pdf").read_bytes())
     assert len(whole) == pages + 1  # and the index

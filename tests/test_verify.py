@@ -358,3 +358,14 @@ def test_the_command_prints_each_check_each_difference_and_the_caution(
     path.write_bytes(issued("light"))
     assert verify_all([path], Asked(as_json=True)) == 0
     assert json.loads(capsys.readouterr().out)["passed"] is True
+
+
+def test_a_cut_cable_without_stiffness_is_proved_and_its_head_held() -> None:
+    scenario = Scenario(loads=("12 kN", "9 kN"), has_masts=False)
+    data, _ = solve_bytes(drawn(scenario), Options(cut=True))
+    file = open_issued(data)
+    head = next(key for key in file.ours if file.kind(key) == "TEXT" and "CUT, " in file.text(key))
+    for each in (data, unmarked(data)):
+        assert proof_of(each).passed, told(proof_of(each))
+    for each in (file.without(head), unmarked(file.without(head))):
+        assert "schedule" in failed(proof_of(each))

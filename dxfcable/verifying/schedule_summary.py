@@ -32,6 +32,8 @@ _NAMES = (
     *("UNSTRESSED LENGTH", "CABLE WEIGHT", "EA", "SUPPORTS", "ELEVATIONS"),
 )
 
+_RIGID, _TABLES = "CUT, INEXTENSIBLE", 3  # summary, points, pieces
+
 
 def length_slack(facts: SpanLabels) -> float:
     """Give how well lengths along a span are known [length]."""
@@ -45,6 +47,8 @@ def hold_summary(
     for first, second in schedule.summary:
         if first is None or second is None:
             lone = first or second
+            if lone is not None and lone.text == _RIGID:
+                continue
             text = f'the row of "{lone.text}" is not whole' if lone else "a row is not whole"
             tally.fail(SCHEDULE, text, lone)
     shapes = [s.shape for s in spans if s.shape is not None]
@@ -52,6 +56,7 @@ def hold_summary(
     for missing in [name for name in (*_NAMES, *_pull_names(spans)) if name not in known]:
         tally.fail(SCHEDULE, f'the row of "{missing}" is missing', _like(schedule, missing))
     _hold_given(tally, known, spans[0], reader)
+    _hold_rigid(tally, schedule, known)
     if len(shapes) != len(spans):
         return
     for name, cell in _summary_cells(spans, shapes).items():
@@ -62,6 +67,18 @@ def hold_summary(
         if name in known:
             hold_cell(tally, known[name], name, cell, reader)
     _hold_largest(tally, known.get("LARGEST TENSION"), spans, reader)
+
+
+def _hold_rigid(tally: Tally, schedule: Schedule, known: Mapping[str, IssuedEntity | None]) -> None:
+    """Hold the heads over the tables of a cable that is cut and does not stretch."""
+    due = [known.get(name) for name in ("STATUS", "EA")]
+    is_due = [e.text if e is not None else "" for e in due] == ["CUT", "INEXTENSIBLE"]
+    heads = [entity for entity in schedule.entities() if entity.text == _RIGID]
+    if is_due and len(heads) < _TABLES:
+        text = f'{len(heads)} tables have the head "{_RIGID}", {_TABLES} are due'
+        tally.fail(SCHEDULE, text, due[0])
+    elif heads and not is_due and None not in due:
+        tally.fail(SCHEDULE, f'its head says "{_RIGID}", its rows do not', heads[0])
 
 
 def _pull_names(spans: Sequence[SpanLabels]) -> list[str]:

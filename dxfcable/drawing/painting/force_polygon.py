@@ -55,7 +55,6 @@ def draw_force_polygon(
     plotting: Plotting,
     per_paper: float,
     rounder: Rounder,
-    *_: object,  # sheeting still hands on an empty mapping
 ) -> DiagramSketch:
     """Draw the diagrams of all spans side by side, with their scales in words and as a bar.
 

@@ -44,7 +44,6 @@ def draw_joint(
     plotting: Plotting,
     per_paper: float,
     rounder: Rounder,
-    *_: object,  # sheeting still hands on an empty mapping
 ) -> Sketch:
     """Draw one joint's force polygon about its first corner as origin.
 
