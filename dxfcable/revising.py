@@ -18,7 +18,7 @@ from dxfcable.solving import solve
 if TYPE_CHECKING:
     from collections.abc import Mapping, Sequence
 
-    from dxfcable.model import Cable, FormedCable, Layout, Movement, Point, Solution
+    from dxfcable.model import Cable, FormedCable, Layout, Movement, Point, Rule, Solution
     from dxfcable.recorded import CableRecord
     from dxfcable.settings import Settings
 
@@ -227,21 +227,35 @@ def _to_form(layout: Layout, records: Mapping[str, CableRecord], findings: list[
         record = records[cable.mark]
         if record.status == CUT:
             findings.append(discarded(cable))
+        stated, used = record.stated_rule, record.rule
         if cable.rule is None:
-            cable = replace(cable, rule=record.rule)
-        elif (cable.rule.kind, cable.rule.value) != (record.rule.kind, record.rule.value):
-            text = f"cable {cable.mark}: the rule of the drawing is not the one used last"
+            cable = replace(cable, rule=used)
+        elif not _is_same_rule(cable.rule, used):
+            is_overruled = stated is not None and _is_same_rule(cable.rule, stated)
+            held = "the one used last" if is_overruled else "the drawing's"
             findings.append(
                 Finding(
                     code="rule-changed",
                     severity=Severity.NOTE,
-                    text=f"{text} ({record.rule.kind.name} {record.rule.value:g}); the drawing's "
+                    text=f"cable {cable.mark}: {cable.rule.kind.name} {cable.rule.value:g} of the "
+                    f"drawing is not the rule used last, {used.kind.name} {used.value:g}; {held} "
                     "is held",
                     cable=cable.mark,
                 )
             )
-        cables.append(replace(cable, under=cable.under or record.under))
+            if is_overruled:
+                cable = replace(cable, rule=used)
+        under = cable.under or record.under
+        if record.stated_under is not None and cable.under == record.stated_under:
+            parts = cable.under.rpartition(":")[2].split(), record.under.split()
+            under = cable.under if "".join(parts[0]) == "".join(parts[1]) else record.under
+        cables.append(replace(cable, under=under))
     return replace(layout, cables=tuple(cables))
+
+
+def _is_same_rule(a: Rule, b: Rule) -> bool:
+    """Tell whether two rules ask the same."""
+    return (a.kind, a.value, a.point) == (b.kind, b.value, b.point)
 
 
 def discarded(cable: Cable) -> Finding:

@@ -7,6 +7,7 @@ import itertools
 import math
 from typing import TYPE_CHECKING
 
+from dxfcable.drawing.painting.naming import anchor_names
 from dxfcable.verifying.schedule_cells import (
     SCHEDULE,
     Cell,
@@ -179,8 +180,7 @@ def hold_joint_rows(
                 tally.fail(SCHEDULE, f"{name} is missing", _like(schedule, name))
             else:
                 hold_cell(tally, schedule.value(name), name, cell, reader)
-        for anchor in found.anchors:
-            name = f"ANCHOR {anchor.mark or mark}"
+        for name, anchor in zip(anchor_names(found), found.anchors, strict=True):
             entities = [v for n, v in schedule.summary if n is not None and n.text == name]
             if not entities:
                 tally.fail(SCHEDULE, f"{name} is missing", _like(schedule, name))
