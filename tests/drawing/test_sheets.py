@@ -35,7 +35,6 @@ SLOW = pytest.mark.slow
 QUICK = [
     ("A1", 12, 2),
     ("A3", 3, 1),
-    ("A3", 8, 2),
     ("A4", 12, 2),
     ("ARCH-D", 3, 1),
     ("ANSI-A", 5, 1),
