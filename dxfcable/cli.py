@@ -413,7 +413,7 @@ def _refuse_in_json(error: DxfcableError) -> None:
     if "--json" in sys.argv:
         import json
 
-        from dxfcable.report import error_finding, refused
+        from dxfcable.reporting.report import error_finding, refused
 
         typer.echo(json.dumps(refused("", [error_finding(error)]), indent=1))
 
@@ -430,7 +430,7 @@ def main() -> None:
     try:
         sys.exit(app(standalone_mode=False) or 0)
     except DxfcableError as error:
-        from dxfcable.report import error_finding, sentence
+        from dxfcable.reporting.report import error_finding, sentence
 
         _refuse_in_json(error)
         typer.echo(sentence(error_finding(error)), err=True)

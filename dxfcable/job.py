@@ -99,7 +99,7 @@ def revise_pieces(
     data: bytes, options: Options, revision: AskedRevision
 ) -> tuple[list[memoryview], Outcome]:
     """Revise as `revise_bytes`, the result as pieces that share the input's memory."""
-    from dxfcable.revising import HOLD_CUT, revise
+    from dxfcable.revising.revise import HOLD_CUT, revise
 
     work = Work(data, options)
     wanted = revision_of(revision)

@@ -13,13 +13,13 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from dxfcable.asking import AskedRevision, AskedRule, Options, Outcome
-    from dxfcable.built import Standing
     from dxfcable.drawing.bytes.scan import Scan
     from dxfcable.drawing.items import Painting, TextItem
     from dxfcable.drawing.record import Memory
     from dxfcable.drawing.strip import Stripping
     from dxfcable.recorded import CableRecord
-    from dxfcable.revising import Revision
+    from dxfcable.revising.revise import Revision
+    from dxfcable.solving.built import Standing
 
 
 class Work:
@@ -38,7 +38,7 @@ class Work:
 
     def _in_units_of(self, layout: Layout) -> Layout:
         """Bring the records into the layout's units, and say so."""
-        from dxfcable.recorded_units import in_units_of
+        from dxfcable.revising.recorded_units import in_units_of
 
         self.records, notes = in_units_of(layout, self.records)
         return replace(layout, findings=(*layout.findings, *notes)) if notes else layout
@@ -60,7 +60,7 @@ class Work:
         wanted = ReadOptions(units=self._options.units, force_unit=self._options.force_unit)
         layout = _with_unit_note(read(cut_out, settings, wanted), self._options.force_unit)
         if layout.plan or layout.plan_points:
-            from dxfcable.plan_loads import apply
+            from dxfcable.loads.plan_loads import apply
 
             layout = apply(layout, settings)
         self._drawn = {cable.mark: cable for cable in layout.cables}
@@ -68,7 +68,7 @@ class Work:
 
     def with_loads(self, layout: Layout) -> Layout:
         """Put the values of a load table into the layout."""
-        from dxfcable import load_table
+        from dxfcable.loads import load_table
 
         options = self._options
         assert options.loads is not None
@@ -87,7 +87,7 @@ class Work:
         LayoutError
             Where reading found a fault that the record does not mend.
         """
-        from dxfcable.keeping import with_new_loads
+        from dxfcable.revising.keeping import with_new_loads
 
         layout = self.layout(with_table=False)
         if self.records and any(f.code == "no-units" for f in layout.findings):
@@ -106,7 +106,7 @@ class Work:
         layout = self.layout()
         if all(record.status != CUT for record in self.records.values()):
             return self._without_tables(layout), {}
-        from dxfcable.keeping import with_cut_cables
+        from dxfcable.revising.keeping import with_cut_cables
 
         layout = self._without_tables(self._in_units_of(layout))
         held = with_cut_cables(
@@ -119,7 +119,7 @@ class Work:
         marked = [r for r in self.records.values() if any(load.source == "csv" for load in r.loads)]
         if not marked or self._options.loads is not None:
             return layout
-        from dxfcable.keeping import dropped_tables
+        from dxfcable.revising.keeping import dropped_tables
 
         notes = dropped_tables(layout, {record.mark: record for record in marked})
         return replace(layout, findings=(*layout.findings, *notes))
@@ -136,7 +136,7 @@ class Work:
         layout, standing = self.held_layout()
         solution = self.solution(layout, standing)
         if any(record.revisions for record in self.records.values()):
-            from dxfcable.revising import kept_revisions
+            from dxfcable.revising.revise import kept_revisions
 
             kept = kept_revisions(solution, self.records)
             solution = replace(solution, revisions=kept)
@@ -202,7 +202,7 @@ class Work:
     ) -> list[str]:
         """Write the record of each cable."""
         from dxfcable.drawing.cable_record import cable_text
-        from dxfcable.recording import record_of
+        from dxfcable.revising.recording import record_of
 
         texts = []
         kept = {revisions.cable: revisions for revisions in solution.revisions}
@@ -228,7 +228,7 @@ class Work:
 
     def solution(self, layout: Layout, standing: Mapping[str, Standing] | None = None) -> Solution:
         """Form the cables, unless reading found a fault: then refuse with all of them."""
-        from dxfcable.solving import Forming, solve
+        from dxfcable.solving.solve import Forming, solve
 
         options = self._options
         rule = _rule(options.rule, layout, options) if options.rule else None
@@ -300,7 +300,7 @@ def revision_of(asked: AskedRevision) -> Revision:
         Where the words make no revision.
     """
     from dxfcable.quantities import parse_temperature_change
-    from dxfcable.revising import HOLD_CUT, HOLD_RULE, Revision
+    from dxfcable.revising.revise import HOLD_CUT, HOLD_RULE, Revision
 
     if asked.hold not in (HOLD_CUT, HOLD_RULE):
         message = f'"{asked.hold}" is nothing that a revision can hold'

@@ -137,7 +137,7 @@ def _layout(
         force = records[0].force_unit if records else _units(issued)[1]
     layout = read(cut_out, settings, ReadOptions(units=units, force_unit=force))
     if layout.plan or layout.plan_points:
-        from dxfcable.plan_loads import apply
+        from dxfcable.loads.plan_loads import apply
 
         layout = apply(layout, settings)
     return replace(layout, force_unit=layout.force_unit or force)

@@ -6,11 +6,11 @@ import json
 import sys
 from typing import TYPE_CHECKING
 
-from dxfcable import report
 from dxfcable.commands.running import Asked, Done, run_over, write_beside
 from dxfcable.errors import DxfcableError
 from dxfcable.files import find_settings, read_drawing
 from dxfcable.job import Outcome
+from dxfcable.reporting import report
 
 if TYPE_CHECKING:
     from pathlib import Path
@@ -31,7 +31,7 @@ def picture_one(drawing: Path, output: Path, asked: Asked, *, layout: str | None
         outcome = Outcome(findings=made.findings)
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_findings(terminal.console(), made.findings)
             terminal.console().print(said)

@@ -5,11 +5,11 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from dxfcable import report
 from dxfcable.commands.running import Asked, Done, options, run_over, write_beside
 from dxfcable.errors import DxfcableError
 from dxfcable.files import read_drawing
 from dxfcable.job import read_bytes
+from dxfcable.reporting import report
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -39,13 +39,13 @@ def read_all(drawings: Sequence[Path], asked: Asked, extras: Extras) -> int:
             image = overlay(data, outcome.layout, outcome.findings)
             said.append(write_beside(extras.picture, image))
         if extras.loads is not None and outcome.layout is not None:
-            from dxfcable import load_table
+            from dxfcable.loads import load_table
 
             text = load_table.write(outcome.layout, chosen.settings)
             said.append(write_beside(extras.loads, text.encode("utf-8")))
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_understood(terminal.console(), outcome)
             terminal.show_findings(terminal.console(), outcome.findings)

@@ -9,17 +9,18 @@ import traceback
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
-from dxfcable import report, safe_write
+from dxfcable import safe_write
 from dxfcable.errors import DxfcableError, LayoutError
 from dxfcable.files import find_settings, read_table, resolve_output
 from dxfcable.job import AskedRule, Options
 from dxfcable.model import Finding, RuleKind, Severity
+from dxfcable.reporting import report
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Iterator, Mapping, Sequence
     from pathlib import Path
 
-    from dxfcable.report import Json
+    from dxfcable.reporting.report import Json
 
 FAULT = 3
 
@@ -195,7 +196,7 @@ def _refuse(drawing: Path, error: DxfcableError, asked: Asked) -> Json:
     if asked.as_json:
         _tell(found)
     else:
-        from dxfcable import terminal
+        from dxfcable.reporting import terminal
 
         out = terminal.console(is_error=True)
         terminal.show_findings(out, found)
@@ -230,6 +231,6 @@ def progress(drawings: Sequence[Path], asked: Asked, what: str = "drawings") -> 
         return
     from rich.progress import track
 
-    from dxfcable.plain_output import rich_console
+    from dxfcable.reporting.plain_output import rich_console
 
     yield from track(drawings, what, console=rich_console(sys.stderr))

@@ -8,15 +8,15 @@ from dxfcable.commands.running import Asked, Done, options, run_over, write_besi
 from dxfcable.errors import DxfcableError, LayoutError, OutputError
 from dxfcable.files import read_drawing
 from dxfcable.job import CAUTION, Outcome, read_bytes
-from dxfcable.schedule_csv import TABLES, is_ours, schedule_csv
-from dxfcable.schedule_report import scheduled
-from dxfcable.schedules import schedules
+from dxfcable.scheduling.schedule_csv import TABLES, is_ours, schedule_csv
+from dxfcable.scheduling.schedule_report import scheduled
+from dxfcable.scheduling.schedules import schedules
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
     from pathlib import Path
 
-    from dxfcable.schedule_rows import Schedules
+    from dxfcable.scheduling.schedule_rows import Schedules
 
 
 def schedule_all(drawings: Sequence[Path], asked: Asked, csv_folder: Path | None) -> int:
@@ -53,8 +53,8 @@ def schedule_all(drawings: Sequence[Path], asked: Asked, csv_folder: Path | None
         said = [] if csv_folder is None else _write(drawing, whole, csv_folder, comma=comma)
 
         def show() -> None:
-            from dxfcable import terminal
-            from dxfcable.schedule_terminal import show_schedules
+            from dxfcable.reporting import terminal
+            from dxfcable.scheduling.schedule_terminal import show_schedules
 
             out = terminal.console()
             show_schedules(whole, lambda line: out.print(line, soft_wrap=True))

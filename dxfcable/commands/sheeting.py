@@ -5,15 +5,15 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
-from dxfcable import report
 from dxfcable.asking import Outcome
 from dxfcable.commands.running import Asked, Done, options, progress, run_over, write_beside
 from dxfcable.drawing.sheeting.sheet import MARK
 from dxfcable.errors import DxfcableError, OutputError
 from dxfcable.files import find_settings, read_drawing
 from dxfcable.model import Finding, Severity
-from dxfcable.sheet_making import Order, make_index, make_sheets, set_pdf
-from dxfcable.sheet_set import (
+from dxfcable.reporting import report
+from dxfcable.sheets.sheet_making import Order, make_index, make_sheets, set_pdf
+from dxfcable.sheets.sheet_set import (
     INDEX,
     Numbers,
     in_order,
@@ -21,14 +21,14 @@ from dxfcable.sheet_set import (
     read_index,
     write_index,
 )
-from dxfcable.sheet_solving import solved_for_sheets
+from dxfcable.sheets.sheet_solving import solved_for_sheets
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
     from pathlib import Path
 
-    from dxfcable.sheet_making import Made
-    from dxfcable.sheet_set import IndexRow
+    from dxfcable.sheets.sheet_making import Made
+    from dxfcable.sheets.sheet_set import IndexRow
 
 SET = "set.pdf"
 
@@ -108,7 +108,7 @@ def sheets_all(drawings: Sequence[Path], asked: Asked, wanted: SheetsAsked) -> i
         said = [*result.written.said, *(shared.said if drawing == last else ())]
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_findings(terminal.console(), told)
             terminal.console().print("\n".join(said))

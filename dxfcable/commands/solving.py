@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from dxfcable import report
 from dxfcable.commands.running import (
     Asked,
     Done,
@@ -19,6 +18,7 @@ from dxfcable.commands.running import (
 from dxfcable.errors import DxfcableError
 from dxfcable.files import read_drawing
 from dxfcable.job import revise_pieces, solve_pieces, strip_bytes
+from dxfcable.reporting import report
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -43,7 +43,7 @@ def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
         )
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_solved(terminal.console(), outcome)
             terminal.show_findings(terminal.console(), outcome.findings)
@@ -71,7 +71,7 @@ def revise_all(
         )
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_revised(terminal.console(), outcome)
             terminal.show_findings(terminal.console(), outcome.findings)
@@ -97,7 +97,7 @@ def strip_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
         what = f"{count} entities taken out" if count else "nothing of ours in it: a copy"
 
         def show() -> None:
-            from dxfcable import terminal
+            from dxfcable.reporting import terminal
 
             terminal.show_findings(terminal.console(), outcome.findings)
             terminal.console().print(f"{what}; {said}")

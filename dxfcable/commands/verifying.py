@@ -4,16 +4,16 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from dxfcable import report
 from dxfcable.commands.running import Asked, Done, options, run_over
 from dxfcable.files import read_drawing
+from dxfcable.reporting import report
 from dxfcable.verify import verify_bytes
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
     from pathlib import Path
 
-    from dxfcable.report import Json
+    from dxfcable.reporting.report import Json
     from dxfcable.verify import CableProof, Proof
     from dxfcable.verifying.tally import Check, Difference
 
@@ -35,8 +35,8 @@ def verify_all(drawings: Sequence[Path], asked: Asked) -> int:
 
 def show_proof(proof: Proof) -> None:
     """Print one line a check, then every difference, then the caution."""
-    from dxfcable import terminal
     from dxfcable.job import CAUTION
+    from dxfcable.reporting import terminal
 
     out = terminal.console()
     for cable in proof.cables:

@@ -19,8 +19,8 @@ from dxfcable.errors import DxfcableError, LayoutError
 from dxfcable.files import read_drawing
 from dxfcable.job import solve_pieces
 from dxfcable.model import Finding, Severity
-from dxfcable.report import error_finding, sentence
-from dxfcable.watched import change_line
+from dxfcable.reporting.report import error_finding, sentence
+from dxfcable.reporting.watched import change_line
 
 if TYPE_CHECKING:
     from collections.abc import Iterator, Sequence

@@ -7,10 +7,10 @@ import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from dxfcable.anchorages import MovedHead, anchorages, loads_at_supports
 from dxfcable.drawing.painting.naming import unique_parts
 from dxfcable.model import Reaction
 from dxfcable.pairing import pair
+from dxfcable.solving.anchorages import MovedHead, anchorages, loads_at_supports
 from dxfcable.verifying.labelling import Wanted
 from dxfcable.verifying.measure import agreed
 from dxfcable.verifying.words import Kind

@@ -10,9 +10,9 @@ from typing import TYPE_CHECKING
 from dxfcable.drawing.painting.labels import text_width
 from dxfcable.drawing.painting.naming import unique_parts
 from dxfcable.forces import Style, parse_load_text
-from dxfcable.governing import Forming, combination_for, weight_under
 from dxfcable.pairing import pair
-from dxfcable.remarks import Remarks
+from dxfcable.solving.governing import Forming, combination_for, weight_under
+from dxfcable.solving.remarks import Remarks
 from dxfcable.statics.combinations import combine
 from dxfcable.units import QuantityError, convert, tidy
 

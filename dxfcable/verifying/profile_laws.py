@@ -8,9 +8,9 @@ from typing import TYPE_CHECKING
 
 import numpy as np
 
-from dxfcable.hangers import hanger_feet
 from dxfcable.pairing import pair
-from dxfcable.remarks import Remarks
+from dxfcable.solving.hangers import hanger_feet
+from dxfcable.solving.remarks import Remarks
 from dxfcable.statics.catenary_piece import hang
 from dxfcable.units import convert
 from dxfcable.verifying.diagram_laws import PARALLEL

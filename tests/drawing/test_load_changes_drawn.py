@@ -12,14 +12,14 @@ from typing import TYPE_CHECKING
 import numpy as np
 import pytest
 
-from dxfcable import terminal
 from dxfcable.drawing.excerpt import Obstacles
 from dxfcable.drawing.items import LineItem, Painting, TextItem, TriangleItem
 from dxfcable.drawing.painter import paint
 from dxfcable.drawing.painting.naming import anchor_names
 from dxfcable.job import Outcome
 from dxfcable.model import Rule, RuleKind
-from dxfcable.plain_output import PlainConsole
+from dxfcable.reporting import terminal
+from dxfcable.reporting.plain_output import PlainConsole
 from dxfcable.settings import Settings
 from dxfcable.verifying.scale_laws import combination_in
 from tests.drawing.covering import struck_texts

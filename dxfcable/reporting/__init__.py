@@ -1,0 +1,1 @@
+"""An outcome as JSON, as tables, as one line."""

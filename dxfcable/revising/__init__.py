@@ -1,0 +1,1 @@
+"""A load change: what the record keeps, what counts now, what moved."""

@@ -1,0 +1,1 @@
+"""Schedules of cables, hangers and anchorages."""

@@ -1,0 +1,1 @@
+"""What stands on force-diagram sheets and on the checker's page."""

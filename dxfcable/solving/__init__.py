@@ -1,0 +1,1 @@
+"""From Layout to Solution: cables formed, checked and held, heads and anchors in equilibrium."""
