@@ -27,7 +27,7 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
 RUNNER = CliRunner()
-DRAWINGS = Path(__file__).parent.parent / "drawings"
+DRAWINGS = Path(__file__).parents[2] / "drawings"
 
 
 def run(*arguments: object) -> tuple[int, str, str]:
