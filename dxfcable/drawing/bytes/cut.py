@@ -149,7 +149,9 @@ def cut(drawing: Scan, layers: Iterable[str], leave_out: frozenset[int] = frozen
             continue
         kept.append(head)
         body.append(_with_key(drawing, record, head.key))
-    raw = _assemble(drawing, body, blocks.needed_by(h.record for h in kept))
+    # What the library makes of its own gets handles above all that it reads.
+    seed = first_key + len(chosen)
+    raw = _assemble(drawing, body, blocks.needed_by(h.record for h in kept), seed)
     return Cutting(decode(raw, encoding), tuple(kept), tuple(outside), undecodable)
 
 
@@ -198,13 +200,15 @@ def _with_key(drawing: Scan, record: int, key: str) -> bytes:
     return b"".join(piece if piece.endswith(b"\n") else piece + b"\n" for piece in result)
 
 
-def _assemble(drawing: Scan, body: list[bytes], block_spans: list[tuple[int, int]]) -> bytes:
+def _assemble(
+    drawing: Scan, body: list[bytes], block_spans: list[tuple[int, int]], seed: int
+) -> bytes:
     """Put the small drawing together."""
     version = drawing.version or "AC1009"
     out = [
         b"  0\nSECTION\n  2\nHEADER\n  9\n$ACADVER\n  1\n",
         version.encode("latin-1"),
-        b"\n  0\nENDSEC\n",
+        f"\n  9\n$HANDSEED\n  5\n{seed:X}\n  0\nENDSEC\n".encode(),
     ]
     data = drawing.data
     tables = [t for name in _TABLES if (t := drawing.table(name))]
