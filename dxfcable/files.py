@@ -26,10 +26,7 @@ def find_settings(drawing: Path, given: Path | None) -> tuple[Settings, Path | N
     DxfcableError
         Where the page is missing or does not read.
     """
-    path = given
-    if path is None:
-        folders = [drawing.absolute().parent, *drawing.absolute().parent.parents]
-        path = next((f / SETTINGS_NAME for f in folders if (f / SETTINGS_NAME).is_file()), None)
+    path = settings_path(drawing, given)
     if path is None:
         return Settings(), None
     try:
@@ -43,6 +40,14 @@ def find_settings(drawing: Path, given: Path | None) -> tuple[Settings, Path | N
     except DxfcableError as error:
         error.message = f"{path}: {error.message}"
         raise
+
+
+def settings_path(drawing: Path, given: Path | None) -> Path | None:
+    """Return the office's page that holds for a drawing, None where there is none."""
+    if given is not None:
+        return given
+    folders = [drawing.absolute().parent, *drawing.absolute().parent.parents]
+    return next((f / SETTINGS_NAME for f in folders if (f / SETTINGS_NAME).is_file()), None)
 
 
 def read_drawing(path: Path) -> bytes:

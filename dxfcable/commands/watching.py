@@ -15,8 +15,8 @@ from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
 from dxfcable.commands.running import check_names, check_target, options, result_path, write_result
-from dxfcable.errors import DxfcableError, LayoutError
-from dxfcable.files import read_drawing
+from dxfcable.errors import DxfcableError, LayoutError, OutputError
+from dxfcable.files import read_drawing, settings_path
 from dxfcable.job import solve_pieces
 from dxfcable.model import Finding, Severity
 from dxfcable.reporting.report import error_finding, sentence
@@ -31,7 +31,7 @@ if TYPE_CHECKING:
     from dxfcable.commands.running import Asked, Target
 
 _LOOK = 0.25  # seconds between two looks
-_Stamp = tuple[int, int, int]
+_Stamp = tuple[tuple[int, int, int] | None, ...]
 
 
 @dataclass(slots=True, kw_only=True)
@@ -89,16 +89,23 @@ def _looks() -> Iterator[None]:
 
 def _look(one: _Watched, asked: Asked, target: Target) -> None:
     """Solve a drawing if it was saved since, and stands still."""
-    stamp = _stamp(one.drawing)
-    stands = stamp is not None and stamp == one.seen
+    stamp = _stamp(one.drawing, asked)
+    stands = stamp == one.seen
     one.seen = stamp
     if not stands or stamp == one.solved:
+        return
+    if stamp[0] is None:
+        _tell(one, f"{one.drawing.name} is not there; waiting for it")
         return
     one.solved = stamp
     try:
         data = read_drawing(one.drawing)
         pieces, outcome = solve_pieces(data, options(one.drawing, asked))
         written = write_result(one.drawing, one.output, pieces, target)
+    except OutputError as error:
+        one.solved = None  # the result may be free again without a save
+        _tell(one, f"{one.drawing.name}: {_reason(error)}")
+        return
     except DxfcableError as error:
         _tell(one, f"{one.drawing.name}: not done, {one.output.name} stays: {_reason(error)}")
         return
@@ -123,13 +130,19 @@ def _reason(error: DxfcableError) -> str:
     return " ".join(sentence(first).split()) + more
 
 
-def _stamp(drawing: Path) -> _Stamp | None:
+def _stamp(drawing: Path, asked: Asked) -> _Stamp:
+    """Return what changes when the drawing, the office's page or the load table is saved."""
+    page = settings_path(drawing, asked.settings)
+    return tuple(_mark(path) for path in (drawing, page, asked.loads))
+
+
+def _mark(path: Path | None) -> tuple[int, int, int] | None:
     """Return what changes when a file is saved, None while it is not there."""
     try:
-        found = drawing.stat()
+        found = path.stat() if path is not None else None
     except OSError:
         return None
-    return found.st_mtime_ns, found.st_size, found.st_ino
+    return (found.st_mtime_ns, found.st_size, found.st_ino) if found else None
 
 
 def _say(line: str) -> None:

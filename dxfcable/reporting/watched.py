@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING
 
-from dxfcable.lengths import format_elevation
+from dxfcable.lengths import format_elevation, format_length
 from dxfcable.quantities import format_force
 
 if TYPE_CHECKING:
@@ -44,7 +44,13 @@ def _cable(before: FormedCable | None, after: FormedCable, layout: Layout) -> st
     if before == after:
         return ""
     unit, length = layout.force_unit or "", layout.length_unit
-    low = min(after.nodes, key=lambda n: n.elevation)
+    low = min((span.low_point for span in after.spans), key=lambda point: point[1])
+    datum = next((c.datum for c in layout.cables if c.mark == after.mark), None)
+    level = (
+        f"Y {format_length(low[1], length)}"
+        if datum is None
+        else format_elevation(low[1] + datum, length)
+    )
     figures = [
         ("pull", after.horizontal, before.horizontal if before else None),
         ("largest tension", after.max_tension, before.max_tension if before else None),
@@ -55,8 +61,7 @@ def _cable(before: FormedCable | None, after: FormedCable, layout: Layout) -> st
         old = "" if then is None else format_force(then, unit, _DIGITS)
         words.append(f"{name} {new}" if old in ("", new) else f"{name} {old} to {new}")
     loads = _loads(before, after, unit)
-    level = format_elevation(low.elevation, length)
-    return ", ".join([f"{after.mark} {words[0]}", *words[1:], f"low {low.mark} {level}", *loads])
+    return ", ".join([f"{after.mark} {words[0]}", *words[1:], f"low point {level}", *loads])
 
 
 def _loads(before: FormedCable | None, after: FormedCable, unit: str) -> list[str]:

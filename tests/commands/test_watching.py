@@ -6,7 +6,6 @@ import signal
 import subprocess
 import sys
 import threading
-import time
 from queue import Empty, Queue
 from typing import TYPE_CHECKING
 
@@ -100,6 +99,16 @@ def test_each_save_is_solved_and_told_in_one_line(watch: tuple[Watch, Path, Path
     assert process.line().startswith("ended")
 
 
+def test_a_saved_settings_page_counts_as_a_save(watch: tuple[Watch, Path, Path]) -> None:
+    process, drawn, output = watch
+    process.line()
+    process.line()
+    drawn.with_name("dxfcable.toml").write_text('[show]\nplot_scale = "1:50"\n', encoding="utf-8")
+    assert "roof.dxf: nothing changed" in process.line()
+    assert output.read_bytes() != solved(F)
+    assert process.end(signal.SIGINT) == 0
+
+
 def test_a_drawing_that_is_replaced_and_away_for_a_moment_is_waited_for(
     watch: tuple[Watch, Path, Path],
 ) -> None:
@@ -107,7 +116,7 @@ def test_a_drawing_that_is_replaced_and_away_for_a_moment_is_waited_for(
     process.line()
     process.line()
     drawn.unlink()
-    time.sleep(0.6)
+    assert "is not there" in process.line()
     beside = drawn.with_suffix(".tmp")
     beside.write_bytes(EDITED)
     beside.replace(drawn)
