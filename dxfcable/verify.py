@@ -18,6 +18,7 @@ from typing import TYPE_CHECKING
 from dxfcable.errors import DxfcableError
 from dxfcable.model import Finding, Severity
 from dxfcable.verifying.proving import CableProof, prove
+from dxfcable.verifying.unproved import CODE, not_proved
 
 if TYPE_CHECKING:
     from dxfcable.drawing.bytes.scan import Scan
@@ -54,6 +55,11 @@ class Proof:
     def passed(self) -> bool:
         """Whether every check passed and no cable is stale."""
         return all(cable.passed and not cable.stale for cable in self.cables)
+
+    @property
+    def has_unproved(self) -> bool:
+        """Whether tables stand in the drawing that nothing was held against."""
+        return any(finding.code == CODE for finding in self.findings)
 
     @property
     def exit_code(self) -> int:
@@ -96,7 +102,8 @@ def verify_bytes(data: bytes, options: Options) -> Proof:
     layout = _layout(drawing, stripping, issued, records, options)
     cables = prove(issued, layout, records, options.settings)
     notes = tuple(f for f in stripping.findings if f.code not in _TOLD)
-    return Proof(cables=cables, findings=(*notes, *_findings(cables, drawing)))
+    found = (*notes, *_findings(cables, drawing), *not_proved(issued))
+    return Proof(cables=cables, findings=found)
 
 
 def recorded(stripping: Stripping) -> tuple[CableRecord, ...]:

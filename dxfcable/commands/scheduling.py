@@ -11,6 +11,7 @@ from dxfcable.job import CAUTION, Outcome, read_bytes
 from dxfcable.scheduling.schedule_csv import TABLES, is_ours, schedule_csv
 from dxfcable.scheduling.schedule_report import scheduled
 from dxfcable.scheduling.schedules import schedules
+from dxfcable.sheets.changed_since import stale_in
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -43,12 +44,14 @@ def schedule_all(drawings: Sequence[Path], asked: Asked, csv_folder: Path | None
 
     def work(drawing: Path) -> Done:
         chosen = options(drawing, asked)
-        outcome = read_bytes(read_drawing(drawing), chosen)
+        data = read_drawing(drawing)
+        outcome = read_bytes(data, chosen)
         if outcome.layout is None or outcome.solution is None or outcome.exit_code == 2:
             message = "the drawing cannot be scheduled as it is"
             raise LayoutError(message, outcome.findings)
         whole = schedules(outcome.layout, outcome.solution, chosen.settings)
-        findings = tuple(dict.fromkeys((*outcome.findings, *whole.findings)))
+        stale = stale_in(data, chosen, "the schedule shows")
+        findings = tuple(dict.fromkeys((*outcome.findings, *stale, *whole.findings)))
         comma = chosen.settings.units.decimal_comma
         said = [] if csv_folder is None else _write(drawing, whole, csv_folder, comma=comma)
 

@@ -102,9 +102,10 @@ def sheets_all(drawings: Sequence[Path], asked: Asked, wanted: SheetsAsked) -> i
             raise result.fault
         assert result.outcome is not None
         assert result.made is not None
-        findings = (*result.outcome.findings, *result.made.findings, *shared.findings)
+        own = (*result.outcome.findings, *result.made.findings)
+        findings = tuple(dict.fromkeys((*own, *shared.findings)))
         # What belongs to the whole set is told once, after the last drawing.
-        told = findings if drawing == last else (*result.outcome.findings, *result.made.findings)
+        told = findings if drawing == last else own
         said = [*result.written.said, *(shared.said if drawing == last else ())]
 
         def show() -> None:

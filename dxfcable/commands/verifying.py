@@ -47,8 +47,15 @@ def show_proof(proof: Proof) -> None:
             out.print(check_line(check), style=style, soft_wrap=True)
     out.print()
     terminal.show_findings(out, proof.findings)
-    out.print("proved" if proof.passed else "not proved: failed or stale")
+    out.print(outcome(proof))
     out.print(CAUTION)
+
+
+def outcome(proof: Proof) -> str:
+    """Say in a few words what came of a drawing, and never more than was proved."""
+    if not proof.passed:
+        return "not proved: failed or stale"
+    return "proved, but not its tables named above" if proof.has_unproved else "proved"
 
 
 def verdict(cable: CableProof) -> str:

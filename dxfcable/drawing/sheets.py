@@ -46,6 +46,7 @@ __all__ = [
     "table_pages",
 ]
 
+_NOTES = "notes"  # chain of their blocks
 _WORDS = 44.0  # width of notes and legend where they have no column, in text heights
 
 
@@ -229,17 +230,20 @@ class _Maker:
         notes = notes_sketches(self._notes(cables), x1 - x0, y1 - y0, h)
         legend = legend_sketch(views, revisions, x1 - x0, h)
         if room is None:
-            return [], [Drawing(sketch=sketch) for sketch in (*notes, legend)]
+            chained = [Drawing(sketch=sketch, chain=_NOTES) for sketch in notes]
+            return [], [*chained, Drawing(sketch=legend)]
         items: list[Item] = []
         left: list[Block] = []
         top = y1
-        for sketch in (*notes, legend):
+        for number, sketch in enumerate((*notes, legend)):
+            chain = _NOTES if number < len(notes) else ""
             _, low, _, high = sketch.bounds()
-            if high - low <= top - y0:
+            is_behind = bool(chain) and any(block.chain == chain for block in left)
+            if high - low <= top - y0 and not is_behind:
                 items += sketch.moved((x0, top - high), ROUNDER)
                 top -= high - low + paper.gap
             else:
-                left.append(Drawing(sketch=sketch))
+                left.append(Drawing(sketch=sketch, chain=chain))
         return items, left
 
     def _notes(self, cables: range) -> list[str]:
@@ -305,8 +309,9 @@ def finish(
             own = replace(own, supplement=f"{fields.supplement}, CONTINUED")
         frame = Sketch(ROUNDER)
         draw_border(frame, paper)
-        draw_title_block(frame, paper, own)
-        sheets.append(Sheet(stem=stem, paper=paper, fields=own, items=(*frame.items, *page)))
+        cut = draw_title_block(frame, paper, own)
+        items = (*frame.items, *page)
+        sheets.append(Sheet(stem=stem, paper=paper, fields=own, items=items, cut=cut))
     return tuple(sheets)
 
 

@@ -2,7 +2,8 @@
 
 One heading with units, one row a cable, a hanger, and a mast, stay or anchor in each state; the
 caution is the last line. A cell that begins with = + - @ or a control character would be a
-formula to a spreadsheet: texts that do get an apostrophe before them. Plain numbers stay.
+formula to a spreadsheet: texts that do get an apostrophe before them. Figures of ours stay as
+they are, also feet and inches below zero.
 """
 
 from __future__ import annotations
@@ -93,8 +94,8 @@ def _cell(field: Field, words: Words, *, decimal_comma: bool) -> str:
     text = words.number(field)
     if decimal_comma and field.kind is not Kind.TEXT and _NUMBER.match(text):
         text = text.replace(".", ",")
-    is_number = field.kind is not Kind.TEXT and _NUMBER.match(text)
-    return f"'{text}" if text.startswith(_FORMULA) and not is_number else text
+    is_risky = field.kind is Kind.TEXT and text.startswith(_FORMULA)
+    return f"'{text}" if is_risky else text
 
 
 def _cable(whole: Schedules, row: CableRow) -> list[Field]:

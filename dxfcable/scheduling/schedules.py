@@ -6,7 +6,7 @@ import math
 from dataclasses import replace
 from typing import TYPE_CHECKING
 
-from dxfcable.model import Extreme
+from dxfcable.model import Extreme, Finding, Severity
 from dxfcable.scheduling.schedule_lengths import cable_lengths, hanger_lengths
 from dxfcable.scheduling.schedule_rows import (
     AnchorageRow,
@@ -15,6 +15,7 @@ from dxfcable.scheduling.schedule_rows import (
     LevelRange,
     Schedules,
 )
+from dxfcable.settings_cut_length import ALL
 from dxfcable.solving.remarks import Remarks
 
 if TYPE_CHECKING:
@@ -54,6 +55,7 @@ def schedules(layout: Layout, solution: Solution, settings: Settings) -> Schedul
         cables.append(_cable_row(layout, cable, formed, settings, remarks))
         hangers += _hanger_rows(layout, cable, formed, settings, remarks)
         findings += remarks.findings
+    findings += _unused(solution, settings)
     return Schedules(
         length_unit=layout.length_unit,
         force_unit=layout.force_unit or "",
@@ -64,6 +66,27 @@ def schedules(layout: Layout, solution: Solution, settings: Settings) -> Schedul
         anchorages=tuple(_anchorage_rows(layout, solution)),
         findings=tuple(dict.fromkeys(findings)),
     )
+
+
+def _unused(solution: Solution, settings: Settings) -> list[Finding]:
+    """Name the marks of `[cut_length.marks]` that no cable and no hanger has."""
+    known = {ALL}
+    for formed in solution.cables:
+        known.add(formed.mark.casefold())
+        for node in formed.nodes:
+            if node.hanger is not None and node.hanger_foot is not None:
+                known |= {node.mark.casefold(), f"{formed.mark}/{node.mark}".casefold()}
+    unused = [mark for mark, _ in settings.cut_length.marks if mark.casefold() not in known]
+    return [
+        Finding(
+            code="mark-unused",
+            severity=Severity.NOTE,
+            text=f"[cut_length.marks] states values for {mark}: no cable and no hanger of this "
+            "drawing has that mark",
+            remedy="Write the mark as the drawing has it.",
+        )
+        for mark in unused
+    ]
 
 
 def _cable_row(

@@ -13,6 +13,7 @@ from dxfcable.drawing.sheets import Fields, Wish, compose, finish, table_pages
 from dxfcable.model import Finding, Severity
 from dxfcable.scales import read_plot_scale
 from dxfcable.sheets.sheet_check import check_tables
+from dxfcable.sheets.sheet_faults import character_warnings, cut_notes
 from dxfcable.sheets.sheet_lengths import fabrication
 from dxfcable.sheets.sheet_notes import sheet_notes
 from dxfcable.sheets.sheet_set import IndexRow, check_name, index_table, page_names
@@ -99,7 +100,8 @@ def make_sheets(outcome: Outcome, order: Order, numbers: Numbers) -> Made:
     Raises
     ------
     DxfcableError
-        Where the size of paper or the scale does not read, or the paper is too small.
+        Where the size of paper or the scale does not read, the paper is too small, or the
+        number does not fit its field.
     """
     layout, solution = outcome.layout, outcome.solution
     assert layout is not None
@@ -206,27 +208,9 @@ def _written(sheets: Sequence[Sheet], settings: Settings) -> Made:
             )
         )
     elif has_pdf:
-        findings += _character_notes(sheets)
+        findings += character_warnings(sheets)
+    findings += cut_notes(sheets)
     return Made(sheets=tuple(sheets), files=tuple(files), findings=tuple(findings))
-
-
-def _character_notes(sheets: Sequence[Sheet]) -> list[Finding]:
-    """Say which characters the PDF cannot show."""
-    from dxfcable.drawing.items import TextItem
-    from dxfcable.drawing.sheeting.sheet_pdf import unshown
-
-    missing = {
-        character
-        for sheet in sheets
-        for item in sheet.items
-        if isinstance(item, TextItem)
-        for character in unshown(item.text)
-    }
-    if not missing:
-        return []
-    shown = " ".join(f"U+{ord(character):04X}" for character in sorted(missing))
-    text = f"the face of the PDF has no {shown}; they stand as ? there, in DXF and SVG as they are"
-    return [Finding(code="pdf-characters", severity=Severity.NOTE, text=text)]
 
 
 def _scale_notes(groups: Sequence[Group], wanted: float | None) -> list[Finding]:

@@ -18,7 +18,7 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from dxfcable.asking import Options
-    from dxfcable.model import Layout
+    from dxfcable.model import Finding, Layout
     from dxfcable.recorded import CableRecord
 
 # What a drafter did to labels in the drawing does not show on sheets.
@@ -53,7 +53,11 @@ def solved_for_sheets(data: bytes, options: Options) -> Outcome:
         unit = next(iter(records.values())).length_unit
     work = Work(data, replace(options, units=unit, combos=options.combos or combos))
     layout = work.layout(with_table=False)
+    stale: tuple[Finding, ...] = ()
     if records:
+        from dxfcable.sheets.changed_since import changed_since
+
+        stale = changed_since(layout, records, "the sheet shows")
         layout = _as_used(layout, records)
     if options.loads is not None:
         layout = work.with_loads(layout)
@@ -69,7 +73,7 @@ def solved_for_sheets(data: bytes, options: Options) -> Outcome:
 
         solution = replace(solution, revisions=kept_revisions(solution, records))
     own = (f for f in work.stripping.findings if f.code not in _OF_LABELS)
-    findings = unique((*own, *layout.findings, *solution.findings))
+    findings = unique((*own, *stale, *layout.findings, *solution.findings))
     return Outcome(findings=findings, layout=layout, solution=solution)
 
 

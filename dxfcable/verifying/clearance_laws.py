@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 import math
 from typing import TYPE_CHECKING
 
@@ -9,7 +10,7 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from dxfcable.drawing.issued import IssuedEntity
-    from dxfcable.model import Cable
+    from dxfcable.model import Cable, Point
     from dxfcable.verifying.measure import SpanFigures
     from dxfcable.verifying.sheet import Sheet
     from dxfcable.verifying.tally import Tally
@@ -82,11 +83,21 @@ def _away(line: IssuedEntity, label: IssuedEntity) -> float:
     return math.hypot(line.start[0] - label.middle[0], up)
 
 
-def hold_clearance(tally: Tally, sheet: Sheet, prefix: str, cable: Cable, reader: Reader) -> None:
+def hold_clearance(
+    tally: Tally,
+    sheet: Sheet,
+    prefix: str,
+    cable: Cable,
+    spans: Sequence[SpanFigures],
+    reader: Reader,
+) -> None:
     """Hold the dimension against its label, its foot against the clearance line."""
     name = f"{prefix}/clearance"
     line, label = sheet.named.get(name), sheet.named.get(f"{name}-label")
     if line is None and label is None:
+        if _reaches_under(cable.clearance, spans):
+            text = "a clearance line is drawn below the cable, the dimension to it is missing"
+            tally.fail(CLEARANCE, text)
         return
     if line is None or label is None:
         text = f"{name} is not whole: its {'line' if line is None else 'label'} is missing"
@@ -117,8 +128,57 @@ def hold_clearance(tally: Tally, sheet: Sheet, prefix: str, cable: Cable, reader
     off = max(abs(a - b) for a, b in zip(ends, heights, strict=True))
     tally.hold(CLEARANCE, off, near if is_long else room, f"{name} does not end at its heads", line)
     _hold_strokes(tally, sheet, name, heights, line)
-    if not cable.clearance:
+    if cable.clearance:
+        foot = heights[0] if shown.value >= 0.0 else heights[1]
+        _hold_foot(tally, sheet, name, foot, line, cable.clearance)
+    else:
         tally.fail(CLEARANCE, "no clearance line is drawn any more", line)
+
+
+def _reaches_under(line: Sequence[Point], spans: Sequence[SpanFigures]) -> bool:
+    """Tell whether a clearance line reaches under a cable."""
+    if not spans:
+        return False
+    left, right = spans[0].curve[0][0], spans[-1].curve[-1][0]
+    near = 4.0 * spans[0].grain
+    return any(
+        a[0] != b[0] and max(a[0], b[0]) > left + near and min(a[0], b[0]) < right - near
+        for a, b in itertools.pairwise(line)
+    )
+
+
+def _hold_foot(
+    tally: Tally,
+    sheet: Sheet,
+    name: str,
+    foot: float,
+    line: IssuedEntity,
+    drawn: Sequence[Point],
+) -> None:
+    """Hold the foot of the dimension against the drafter's clearance line.
+
+    Strokes reach equally far beyond the place of the least clearance and the dimension, which
+    may stand aside: that tells the place.
+    """
+    x, near = line.start[0], 8.0 * sheet.grain
+    found = [sheet.named.get(f"{name}/level-{number}") for number in (1, 2)]
+    stroke = next((stroke for stroke in found if stroke is not None), None)
+    if stroke is None:
+        return  # told as missing
+    at = stroke.start[0] + stroke.end[0] - x
+    off = math.inf
+    for a, b in itertools.pairwise(drawn):
+        (ax, ay), (bx, by) = sorted((a, b))
+        if not ax - near <= at <= bx + near:
+            continue
+        if bx - ax <= near:
+            off = min(off, max(0.0, min(ay, by) - foot, foot - max(ay, by)))
+            continue
+        share = min(1.0, max(0.0, (at - ax) / (bx - ax)))
+        lean = near * abs(by - ay) / (bx - ax)
+        off = min(off, max(0.0, abs(ay + share * (by - ay) - foot) - lean))
+    text = f"the foot of {name} does not stand on the clearance line"
+    tally.hold(CLEARANCE, off, near, text, line)
 
 
 def _hold_strokes(

@@ -70,7 +70,7 @@ def hold_cable(sheet: Sheet, cable: CableOnBench, reader: Reader) -> Tally:
         hold_schedule(tally, cable.schedule, cable.labels, cable.joints, reader)
     if cable.demand is not None:
         drawn = cable.demand.cable
-        clearance_laws.hold_clearance(tally, sheet, cable.prefix, drawn, reader)
+        clearance_laws.hold_clearance(tally, sheet, cable.prefix, drawn, cable.spans, reader)
     _hold_under(tally, cable)
     _hold_rule(tally, cable, reader)
     return tally
@@ -79,7 +79,10 @@ def hold_cable(sheet: Sheet, cable: CableOnBench, reader: Reader) -> Tally:
 def _hold_spans(tally: Tally, sheet: Sheet, cable: CableOnBench, reader: Reader) -> None:
     demand = cable.demand
     if not cable.spans:
-        tally.fail(profile_laws.SUPPORTS, f"the profile of {cable.prefix} is missing")
+        strays = [e for e in sheet.loose if "profile" in e.roles and e.kind == "LWPOLYLINE"]
+        what = "has lost its mark" if sheet.has_marks and strays else "is missing"
+        text = f"the profile of {cable.prefix} {what}"
+        tally.fail(profile_laws.SUPPORTS, text, strays[0] if strays else None)
     if demand is None:
         tally.fail(READS, "the drafter's drawing has no such cable")
     elif len(cable.spans) != len(demand.cable.supports) - 1 and cable.spans:

@@ -32,8 +32,12 @@ def hold_schedule(
     reader: Reader,
 ) -> None:
     """Hold one cable's schedule against its spans and joints."""
-    if schedule is None or not spans:
+    if schedule is None:
         tally.fail(SCHEDULE, "the schedule is missing")
+        return
+    if not spans:
+        text = "the cable is not whole, so its schedule cannot be held"
+        tally.fail(SCHEDULE, text, schedule.title)
         return
     if schedule.mark != spans[0].cable.mark:
         said = f'"{schedule.title.text}"' if schedule.title else "nothing"

@@ -7,7 +7,6 @@ import itertools
 import math
 from typing import TYPE_CHECKING
 
-from dxfcable.drawing.painting.naming import anchor_names
 from dxfcable.verifying.schedule_cells import (
     SCHEDULE,
     Cell,
@@ -15,6 +14,7 @@ from dxfcable.verifying.schedule_cells import (
     hold_cell,
     hold_words,
 )
+from dxfcable.verifying.schedule_safety import hold_anchor_rows, hold_capacity
 from dxfcable.verifying.words import Kind
 
 if TYPE_CHECKING:
@@ -68,6 +68,7 @@ def hold_summary(
         if name in known:
             hold_cell(tally, known[name], name, cell, reader)
     _hold_largest(tally, known.get("LARGEST TENSION"), spans, reader)
+    hold_capacity(tally, schedule, spans, reader)
 
 
 def _hold_rigid(tally: Tally, schedule: Schedule, known: Mapping[str, IssuedEntity | None]) -> None:
@@ -180,31 +181,4 @@ def hold_joint_rows(
                 tally.fail(SCHEDULE, f"{name} is missing", _like(schedule, name))
             else:
                 hold_cell(tally, schedule.value(name), name, cell, reader)
-        for name, anchor in zip(anchor_names(found), found.anchors, strict=True):
-            entities = [v for n, v in schedule.summary if n is not None and n.text == name]
-            if not entities:
-                tally.fail(SCHEDULE, f"{name} is missing", _like(schedule, name))
-            # Anchors may share a mark: one of the rows must fit.
-            values = (("H", anchor.horizontal), ("UPLIFT", anchor.uplift))
-            if entities and not any(_is_both(e, values, error, reader) for e in entities):
-                entity = entities[0]
-                said = entity.text if entity else ""
-                text = f'{name} says "{said}", not H {values[0][1]:.6g}, UPLIFT {values[1][1]:.6g}'
-                tally.fail(SCHEDULE, text, entity)
-
-
-def _is_both(
-    entity: IssuedEntity | None,
-    values: Sequence[tuple[str, float]],
-    error: float,
-    reader: Reader,
-) -> bool:
-    """Tell whether a cell states two forces."""
-    parts = entity.text.split(", ") if entity else []
-    if len(parts) != len(values):
-        return False
-    for part, (word, value) in zip(parts, values, strict=True):
-        shown = reader.force(part.removeprefix(f"{word} ")) if part.startswith(word) else None
-        if shown is None or abs(shown.value - value) > shown.half + error:
-            return False
-    return True
+    hold_anchor_rows(tally, schedule, joints, _like, reader)

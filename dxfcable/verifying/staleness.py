@@ -44,7 +44,26 @@ def reasons(
     found += _loads("load", record.loads, cable.loads, grain)
     supported = [point for _, point in cable.support_loads]
     found += _loads("load at a support", [p for _, p in record.support_loads], supported, grain)
-    return found + _governing(record, cable)
+    return found + _datum(record, cable, grain) + _governing(record, cable)
+
+
+def _datum(record: CableRecord, cable: Cable, grain: float) -> list[str]:
+    """Compare elevations: stated, no longer stated, or stated otherwise."""
+    before, now = record.datum, cable.datum
+    if before is None and now is None:
+        return []
+    if before is None:
+        return ["no EL was stated, now one is"]
+    if now is None:
+        return ["an EL was stated, now none is"]
+    if abs(now - before) > 4.0 * grain:
+        return [f"EL at its supports was changed by {now - before:.6g}"]
+    return []
+
+
+def _renamed(word: str, before: str, now: str) -> list[str]:
+    """Tell a mark that was changed."""
+    return [] if before == now else [f'{word} "{before}" is marked "{now}" now']
 
 
 def _lost(record: CableRecord, supports: Sequence[Support], grain: float) -> list[str]:
@@ -67,6 +86,7 @@ def _supports(record: CableRecord, cable: Cable, grain: float) -> list[str]:
         off = math.dist((before.x, before.y), (now.x, now.y))
         if off > 2.0 * grain:
             found.append(f"support {now.mark} was moved by {off:.6g}")
+        found += _renamed("support", before.mark, now.mark)
     return found
 
 
@@ -81,6 +101,7 @@ def _loads(
         off = abs(old.x - new.x)
         if off > 2.0 * grain:
             found.append(f"{word} {new.mark} was moved by {off:.6g}")
+        found += _renamed(word, old.mark, new.mark)
         if not _is_same(dict(old.drawn), dict(new.cases)):
             text = f"{word} {new.mark} was {_cases(old.drawn)}, now {_cases(new.cases)}"
             found.append(text)

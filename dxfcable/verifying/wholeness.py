@@ -66,11 +66,13 @@ def hold_whole(
     for copy in issued.copies:
         tally = tallies.get(copy.id.partition("/")[0], first)
         tally.fail(WHOLE, f"{copy.kind} is a copy of {copy.id}", copy)
-    _hold_count(tallies, issued)
+    strangers = _strangers(sheet, places)
+    is_lost = _hold_count(tallies, issued, sheet.loose)
     _hold_leaders(tallies, sheet, places)
-    for entity in _strangers(sheet, places):
+    for entity in strangers:
         what = f'{entity.kind} "{entity.text}"' if entity.text else entity.kind
-        text = f"{what} on {entity.layer} is none of the entities issued, or stands out of place"
+        text = f"{what} on {entity.layer} is none of the entities issued, or "
+        text += "its mark is lost" if is_lost else "stands out of place"
         first.fail(WHOLE, text, entity)
     for entity in _doubled(issued):
         first.fail(WHOLE, f'{entity.kind} "{entity.text}" stands twice in one place', entity)
@@ -97,26 +99,40 @@ def _strayed(entities: Iterable[IssuedEntity], height: float) -> set[int]:
     return found
 
 
-def _hold_count(tallies: Mapping[str, Tally], issued: Issued) -> None:
-    """Hold the number of entities, and the sum of their ids, against the record."""
+def _hold_count(
+    tallies: Mapping[str, Tally], issued: Issued, loose: Sequence[IssuedEntity]
+) -> bool:
+    """Hold the number of entities, and the sum of their ids, against the record.
+
+    Returns
+    -------
+    bool
+        Whether entities are missing; then what stands on our layers without a mark may be those.
+    """
     first = next(iter(tallies.values()))
     if issued.whole is None:
-        return
+        return False
     lost = missing(issued.whole, {name: e.part for name, e in issued.marked.items()})
     if lost is None:
         first.hold(WHOLE, 0.0, 1.0, "")
-        return
+        return False
+    kinds = sorted({e.kind for e in loose})
+    unmarked = f" (or its mark is lost: {', '.join(kinds)} without one)" if kinds else ""
     if lost.extra:
         first.fail(WHOLE, f"{lost.extra} entities carry ids that were not issued")
     elif lost.name:
-        tallies.get(lost.name.partition("/")[0], first).fail(WHOLE, f"{lost.name} is missing")
+        tallies.get(lost.name.partition("/")[0], first).fail(
+            WHOLE, f"{lost.name} is missing{unmarked}"
+        )
     else:
         of_parts = [f"{count} of {part}" for part, count in lost.parts]
         rest = lost.count - sum(count for _, count in lost.parts)
         words = ", ".join([*of_parts, *([f"{rest} elsewhere"] if rest else [])])
         tally = tallies.get(lost.parts[0][0].partition("/")[0], first) if lost.parts else first
         noun = "entity of ours is" if lost.count == 1 else "entities of ours are"
-        tally.fail(WHOLE, f"{lost.count} {noun} missing: {words}")
+        unmarked = unmarked.replace("its mark is", "their marks are")
+        tally.fail(WHOLE, f"{lost.count} {noun} missing{unmarked}: {words}")
+    return not lost.extra
 
 
 def _hold_leaders(

@@ -19,7 +19,7 @@ from dxfcable.scheduling.schedules import schedules
 from dxfcable.settings import Settings, load
 from dxfcable.solving.solve import Forming, solve
 from tests.crossing import crossing, layout
-from tests.generated import RULELESS, CableOptions, drawing
+from tests.generated import RULELESS, CableOptions, change_load_text, drawing
 from tests.layouts import sample
 
 if TYPE_CHECKING:
@@ -207,6 +207,23 @@ def test_feet_and_inches_of_the_csv_keep_their_marks() -> None:
     assert column(texts["cables"], "length as formed (ft-in)") == ["123'-1 3/16\""]
     assert column(texts["hangers"], "length (ft-in)")[0] == "15'-8 3/16\""
     assert rows(texts["anchorages"]) == [["no anchorages"], [CAUTION]]
+
+
+def test_feet_below_zero_get_no_apostrophe() -> None:
+    texts = schedule_csv(whole(layout(crossing(None, datum=None))))
+    levels = column(texts["hangers"], "cable elevation (ft-in)")
+    assert all(level.startswith("-") for level in levels)
+
+
+def test_an_issued_drawing_that_was_changed_says_so(bridge: Path, tmp_path: Path) -> None:
+    issued = tmp_path / "issued.dxf"
+    run("solve", bridge, "-o", issued)
+    assert "since it was issued" not in run("schedule", issued).output
+    issued.write_bytes(change_load_text(issued.read_bytes(), 0, b"18 kN"))
+    result = run("schedule", issued, "--json")
+    stale = [f for f in json.loads(result.stdout)["findings"] if f["code"] == "stale"]
+    assert result.exit_code == 1
+    assert "now 18; the schedule shows it as it is drawn now" in stale[0]["text"]
 
 
 def test_a_decimal_comma_office_gets_semicolons_and_commas() -> None:

@@ -281,6 +281,56 @@ def test_what_an_earlier_run_left_over_is_named_and_left(tmp_path: Path) -> None
 
 
 @pytest.mark.usefixtures("light")
+def test_an_issued_drawing_that_was_changed_says_so(bridge: Path, tmp_path: Path) -> None:
+    issued = tmp_path / "issued.dxf"
+    RUNNER.invoke(app, ["solve", str(bridge), "-o", str(issued)])
+    code, out, _ = run(issued, "-d", tmp_path / "set")
+    assert code == 0
+    issued.write_bytes(change_load_text(issued.read_bytes(), 0, b"18 kN"))
+    code, out, _ = run(issued, "-d", tmp_path / "set")
+    words = " ".join(out.split())
+    assert code == 1
+    assert "the drawing changed since it was issued: load" in words
+    assert "the sheet shows it as it is drawn now" in words
+
+
+@pytest.mark.usefixtures("light")
+def test_a_long_number_stands_whole_and_one_that_cannot_is_refused(
+    bridge: Path, tmp_path: Path
+) -> None:
+    prefix = "PRJ-2026-0001-STR-CABLE-FD-"
+    page = tmp_path / "dxfcable.toml"
+    page.write_text(f'[sheet]\nnumber_prefix = "{prefix}"\n', encoding="utf-8")
+    for size in ("A1", "A4", "ANSI-A", "ARCH-D"):
+        folder = tmp_path / size
+        assert run(bridge, "-d", folder, "--size", size)[0] == 0
+        words = "".join(text_of(folder / "bridge-C1.pdf").split())
+        assert f"{prefix}001" in words
+    page.write_text(f'[sheet]\nnumber_prefix = "{4 * prefix}"\n', encoding="utf-8")
+    code, _, error = run(bridge, "-d", tmp_path / "none")
+    assert code == 2
+    assert "does not fit the title block" in " ".join(error.split())
+
+
+@pytest.mark.usefixtures("light")
+def test_fields_that_are_cut_and_characters_that_the_pdf_lacks_are_named(
+    bridge: Path, tmp_path: Path
+) -> None:
+    page = tmp_path / "dxfcable.toml"
+    long = "A very long name of an office " * 8
+    page.write_text(f'[sheet]\nowner = "{long}"\ndrawn = "NN"\n', encoding="utf-8")
+    code, out, _ = run(bridge, "-d", tmp_path / "a")
+    assert code == 0
+    assert "LEGAL OWNER (owner in [sheet])" in " ".join(out.split())
+    page.write_text('[sheet]\nproject = "\u0141\u00f3d\u017a"\n', encoding="utf-8")
+    code, out, _ = run(bridge, "-d", tmp_path / "b")
+    assert code == 1
+    words = " ".join(out.split())
+    assert "U+0141" in words
+    assert "PROJECT (project in [sheet])" in words
+
+
+@pytest.mark.usefixtures("light")
 def test_a_changed_load_changes_its_sheet(bridge: Path, tmp_path: Path) -> None:
     folder = tmp_path / "set"
     run(bridge, "-d", folder)

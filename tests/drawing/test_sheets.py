@@ -148,6 +148,18 @@ def test_rays_are_parallel_to_the_pieces_and_true_to_the_force_scale() -> None:
         assert abs((angle - piece.angle + 90) % 180 - 90) < 1e-3
 
 
+@pytest.mark.parametrize(
+    ("size", "is_inch", "begin"),
+    [("A1", True, "FORCE 1 in = "), ("ARCH-D", False, "FORCE 1 cm = ")],
+)
+def test_force_scales_follow_the_drawing_whatever_the_paper(
+    size: str, is_inch: bool, begin: str
+) -> None:
+    sheet = made(*layout_of(invented(5, 1, is_inch=is_inch)), size)[0]
+    words = next(t.text for t in texts_of(sheet) if t.id == "C1/diagram-title/words-1")
+    assert words.startswith(begin)
+
+
 def test_scales_of_feet_are_those_of_architects_and_engineers() -> None:
     # 1/8" = 1'-0" is 1:96, 1" = 20'-0" is 1:240 (common practice).
     assert {96.0, 48.0, 240.0} <= set(usual_scales("ft"))

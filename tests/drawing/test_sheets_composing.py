@@ -73,7 +73,30 @@ def composed(size: str, count: int, seed: int) -> Cell:
     return cell
 
 
+def chained(width: float, height: float) -> Drawing:
+    return replace(block(width, height), chain="notes")
+
+
 # --- columns --------------------------------------------------------------------------------
+
+
+@given(SIZES, st.booleans())
+@settings(max_examples=30)
+def test_blocks_of_a_chain_are_placed_in_their_order(
+    sizes: list[tuple[float, float]], in_order: bool
+) -> None:
+    blocks = [chained(*size) for size in [(150.0, 118.0), *sizes]]
+    found = fill(blocks, Room(region=REGION, taken=(), gap=GAP, in_order=in_order))
+    order = [next(k for k, b in enumerate(blocks) if b is put) for put, _ in found.placed]
+    assert order == list(range(len(order)))
+
+
+def test_a_continued_block_waits_for_one_that_finds_no_place() -> None:
+    high, low = chained(30.0, 200.0), chained(30.0, 20.0)
+    other = block(30.0, 20.0)
+    found = fill([high, low, other], Room(region=REGION, taken=(), gap=GAP, in_order=False))
+    assert [put for put, _ in found.placed] == [other]
+    assert found.rest == (high, low)
 
 
 @settings(max_examples=40)

@@ -182,6 +182,14 @@ def test_a_force_of_the_settings_that_this_drawing_cannot_read_is_refused() -> N
     assert caught.value.code == "settings"
 
 
+def test_a_mark_that_nothing_has_is_named() -> None:
+    page = "[cut_length.marks.C1]\ndeck_pin = 0.1\n[cut_length.marks.C9]\ndeck_pin = 0.1\n"
+    page += "[cut_length.marks.'*']\nclamp_drop = 0.1\n"
+    unused = [f for f in scheduled(sample(), page).findings if f.code == "mark-unused"]
+    assert len(unused) == 1
+    assert "C9" in unused[0].text
+
+
 def test_a_hanger_is_as_long_as_from_cable_to_deck() -> None:
     """Crossing, OWN: node 1 hangs 4.32 under the string, the points lie at -20."""
     row = the_hanger()

@@ -22,9 +22,10 @@ class DiagramWanted:
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Drawing:
-    """A block of fixed size."""
+    """A block of fixed size; those of one `chain`, if it has any, stand in their order."""
 
     sketch: Sketch
+    chain: str = ""
 
     @cached_property
     def size(self) -> tuple[float, float]:

@@ -207,6 +207,9 @@ class _Search:
         for low, top in self.room.runs(left, left + width):
             y, k = top, 0
             while k < len(rest):
+                if _is_behind(rest, k):
+                    k += 1
+                    continue
                 wide, high = rest[k].size
                 if wide <= width + _TOUCH and high <= y - low + _TOUCH:
                     placed.append((rest.pop(k), (left, y - high, left + wide, y)))
@@ -240,3 +243,9 @@ class _Search:
             self._kept.append(block)
             self._parts[key] = block.fitting(height, least)
         return self._parts[key]
+
+
+def _is_behind(rest: Sequence[Block], place: int) -> bool:
+    """Tell whether a block continues one that has no place yet."""
+    chain = rest[place].chain
+    return bool(chain) and any(block.chain == chain for block in rest[:place])

@@ -22,6 +22,7 @@ from dxfcable.drawing.sheeting.titles import (
     force_scale_words,
     title_size,
 )
+from dxfcable.quantities import is_imperial
 
 if TYPE_CHECKING:
     from collections.abc import Iterator
@@ -56,6 +57,11 @@ class DiagramMaker:
     _side_by_side: dict[float, Sketch] = field(default_factory=dict)
     _drawn: dict[tuple[float, float], Drawing] = field(default_factory=dict)
 
+    @property
+    def _is_inch(self) -> bool:
+        """Whether forces are stated by the inch of paper: as the drawing, whatever the paper."""
+        return is_imperial(self.view.wording.length_unit)
+
     def scales(self, width: float, height: float, most: float) -> Iterator[tuple[float, float]]:
         """List usual scales by which the bare diagrams may fit a room, the finest first.
 
@@ -71,7 +77,7 @@ class DiagramMaker:
         tuple of float
             Force by paper unit; the larger measure of the largest diagram [mm], legible.
         """
-        plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
+        plotting = plotting_of(self.paper.text, is_inch=self._is_inch)
         sizes = [diagram_size(diagram) for diagram in self.view.formed.diagrams]
         legible = (_LEGIBLE if len(sizes) == 1 else _LEGIBLE_SPAN) * self.paper.text
         wide, high = max(w for w, _ in sizes), max(h for _, h in sizes)
@@ -107,7 +113,7 @@ class DiagramMaker:
         """Draw the diagrams of all spans side by side, once for each scale."""
         if per_paper in self._side_by_side:
             return self._side_by_side[per_paper]
-        plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
+        plotting = plotting_of(self.paper.text, is_inch=self._is_inch)
         drawn = draw_force_polygon(view, plotting, per_paper, ROUNDER)
         sketch = Sketch(ROUNDER)
         sketch.items = [i for i in drawn.sketch.items if not any(w in i.id for w in _WORDS)]
@@ -127,7 +133,7 @@ class DiagramMaker:
         formed = view.formed
         assumed = ", ASSUMED" if formed.level_is_assumed else ""
         lines = (
-            force_scale_words(per_paper, view.wording.force_unit, is_inch=self.paper.is_inch),
+            force_scale_words(per_paper, view.wording.force_unit, is_inch=self._is_inch),
             f"FORM {scale_words(self.form_scale, view.wording.length_unit)}",
             f"{under_words(view)} ({formed.level.upper()}{assumed})",
         )
@@ -142,7 +148,7 @@ class DiagramMaker:
         h = self.paper.text
         left, bottom, right, _ = sketch.bounds()
         unit = self.view.wording.force_unit
-        step, labels = force_bar(per_paper, unit, is_inch=self.paper.is_inch)
+        step, labels = force_bar(per_paper, unit, is_inch=self._is_inch)
         width, _ = title_size(self.paper, title, lines)
         y = draw_view_title(sketch, name, (left, bottom - h), self.paper, title, lines)
         beside = left + width + 5.0 * h
@@ -156,7 +162,7 @@ class DiagramMaker:
         sizes = [joint_size(anchorage) for _, anchorage in self.view.anchorages]
         if not any(sizes):
             return []
-        plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
+        plotting = plotting_of(self.paper.text, is_inch=self._is_inch)
         # One scale for all, that of the largest: joints are compared by eye.
         least = max(sizes) / (_JOINT * self.paper.text) * plotting.on_drawing(1.0)
         per_paper = next(plotting.force_scales(least))
@@ -169,12 +175,12 @@ class DiagramMaker:
     def _joint(self, name: str, anchorage: Anchorage, per_paper: float) -> Sketch:
         """Draw one joint."""
         view = self._paper_view()
-        plotting = plotting_of(self.paper.text, is_inch=self.paper.is_inch)
+        plotting = plotting_of(self.paper.text, is_inch=self._is_inch)
         drawn = draw_joint(view, name, anchorage, plotting, per_paper, ROUNDER)
         sketch = Sketch(ROUNDER)
         sketch.items = [i for i in drawn.items if not any(w in i.id for w in _WORDS)]
         lines = (
-            force_scale_words(per_paper, view.wording.force_unit, is_inch=self.paper.is_inch),
+            force_scale_words(per_paper, view.wording.force_unit, is_inch=self._is_inch),
             f"FORCES ON THE JOINT, {under_words(view)}",
         )
         title = f"JOINT {brief(anchorage.mark)}"

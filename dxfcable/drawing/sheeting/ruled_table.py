@@ -111,6 +111,11 @@ class RuledTable:
         """Give the title; a run that does not begin the schedule says so."""
         return self.schedule.title + (CONTINUED if self.first else "")
 
+    @property
+    def chain(self) -> str:
+        """Name what is the same of all parts of a schedule, which stand in their order."""
+        return f"{self.name}/{self.schedule.title.removesuffix(CONTINUED)}"
+
     @cached_property
     def size(self) -> tuple[float, float]:
         """Width and height with the title [mm]."""

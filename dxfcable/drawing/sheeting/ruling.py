@@ -6,7 +6,8 @@ from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from dxfcable.drawing.sheeting.ruled_table import CONTINUED, RuledTable
-from dxfcable.drawing.sheeting.title_block import fitted, places
+from dxfcable.drawing.sheeting.title_block import places
+from dxfcable.drawing.sheeting.title_texts import fitted
 
 if TYPE_CHECKING:
     from collections.abc import Iterable

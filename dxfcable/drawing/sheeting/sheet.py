@@ -26,12 +26,15 @@ class Sheet:
         As its title block says.
     items : tuple of Item
         In millimetres from the lower left corner of the paper.
+    cut : tuple of str
+        Names of fields whose texts are cut.
     """
 
     stem: str
     paper: Paper
     fields: Fields
     items: tuple[Item, ...]
+    cut: tuple[str, ...] = ()
 
     @property
     def title(self) -> str:

@@ -9,22 +9,29 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from dxfcable.drawing.painting.labels import text_width
-from dxfcable.drawing.painting.sketch import shown
 from dxfcable.drawing.sheeting.papers import TITLE_WIDTH
-from dxfcable.drawing.sheeting.ruled_table import wrapped
+from dxfcable.drawing.sheeting.revision_rows import draw_revisions, revision_row
 from dxfcable.drawing.sheeting.text_blocks import caution_lines, draw_caution
+from dxfcable.drawing.sheeting.title_texts import (
+    NUMBER,
+    STEP,
+    fitted,
+    in_lines,
+    number_lines,
+    widths,
+)
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
-
     from dxfcable.drawing.painting.sketch import Bounds, Sketch
     from dxfcable.drawing.sheeting.papers import Paper
+    from dxfcable.drawing.sheeting.title_texts import Lines
     from dxfcable.model import RevisionRow
 
 _LEAST_BESIDE = 61.0  # left of the title block for caution and revisions [mm]
 _TITLE_ROWS = 1.75  # height of the row of the title, in rows
 _REVISION_ROWS = 6  # in a column, filled or to fill
+_PAD = 0.4  # beside a text, in text heights
+_LOW, _HIGH = 0.38, 1.62  # of a field's room for two lines, in heights of its name
 _MARK = 5.0  # centring marks reach inwards [mm]
 
 
@@ -62,8 +69,8 @@ class Places:
 
 
 def _row(paper: Paper) -> float:
-    """Give the height of a field [mm]."""
-    return 1.5 * paper.small + 1.9 * paper.text + 0.6
+    """Give the height of a field, of its name and two lines of the least letters [mm]."""
+    return max(1.5 * paper.small + 1.9 * paper.text + 0.6, 4.4 * paper.small)
 
 
 def _title_height(paper: Paper) -> float:
@@ -103,12 +110,8 @@ def places(paper: Paper) -> Places:
     )
 
 
-def _revision_row(paper: Paper) -> float:
-    return 2.0 * paper.text
-
-
 def _revision_height(paper: Paper, rows: int) -> float:
-    return (rows + 1) * _revision_row(paper)
+    return (rows + 1) * revision_row(paper)
 
 
 def _caution_height(paper: Paper, width: float) -> float:
@@ -155,21 +158,28 @@ def _clipped(
     return out(start), out(end)
 
 
-def draw_title_block(sketch: Sketch, paper: Paper, fields: Fields) -> None:
-    """Draw title block, revision rows and caution."""
+def draw_title_block(sketch: Sketch, paper: Paper, fields: Fields) -> tuple[str, ...]:
+    """Draw title block, revision rows and caution; return the names of fields that are cut.
+
+    Raises
+    ------
+    DxfcableError
+        With code `settings`, where the number does not fit.
+    """
     where = places(paper)
-    _draw_fields(sketch, paper, fields, where.title)
+    cut = _draw_fields(sketch, paper, fields, where.title)
     x0, y0, x1, y1 = where.caution
     sketch.line("title/left", "title", (x1, y0), (x1, y1))
     room = y1 - y0 - _caution_height(paper, x1 - x0)
-    rows = max(1, int((room + 1e-6) / _revision_row(paper)) - 1)
-    _draw_revisions(sketch, paper, fields.revisions, (x0, y0, x1, y1), rows)
+    rows = max(1, int((room + 1e-6) / revision_row(paper)) - 1)
+    draw_revisions(sketch, paper, fields.revisions, (x0, y0, x1, y1), rows)
     top = y0 + _revision_height(paper, rows)
     at = (x0 + 1.5 * paper.text, y1 - 0.4 * paper.text)
     draw_caution(sketch, "title", at, x1 - x0 - 3.0 * paper.text, paper.text)
     sketch.line("title/above-revisions", "title", (x0, top), (x1, top))
     if paper.has_column:
         sketch.line("title/above-caution", "title", (x0, y1), (x1, y1))
+    return tuple(cut)
 
 
 def _layout(fields: Fields) -> tuple[tuple[tuple[str, str, float], ...], ...]:
@@ -186,7 +196,7 @@ def _layout(fields: Fields) -> tuple[tuple[tuple[str, str, float], ...], ...]:
         ),
         (
             ("DOCUMENT TYPE", fields.kind, 0.26),
-            ("NUMBER", fields.number, 0.24),
+            (NUMBER, fields.number, 0.24),
             ("REV.", fields.revision, 0.09),
             ("SHEET", fields.sheet, 0.12),
             ("LANG.", fields.language, 0.09),
@@ -195,104 +205,97 @@ def _layout(fields: Fields) -> tuple[tuple[tuple[str, str, float], ...], ...]:
     )
 
 
-def _draw_fields(sketch: Sketch, paper: Paper, fields: Fields, box: Bounds) -> None:
+def field_of(item: str) -> str:
+    """Name the field that an item of the title block writes a value of; "" for any other.
+
+    Examples
+    --------
+    >>> field_of("title/0-0/value"), field_of("title/title"), field_of("C1/node-1")
+    ('LEGAL OWNER', 'TITLE', '')
+    """
+    for key, name in (("title/title", "TITLE"), ("title/supplement", "SUPPLEMENTARY TITLE")):
+        if item.startswith(key):
+            return name
+    for number, row in enumerate(_layout(Fields())):
+        for k, (name, _, _) in enumerate(row):
+            if item.startswith(f"title/{number}-{k}/value"):
+                return name
+    return "REVISIONS" if item.startswith("revisions/") else ""
+
+
+def _draw_fields(sketch: Sketch, paper: Paper, fields: Fields, box: Bounds) -> list[str]:
+    """Draw the fields row by row; return the names of those that are cut."""
     x0, y0, x1, y1 = box
     rows = _layout(fields)
     rise = (y1 - y0) / (len(rows) - 1 + _TITLE_ROWS)
     top = y1
+    cut: list[str] = []
     for number, row in enumerate(rows):
         high = rise * (_TITLE_ROWS if number == 1 else 1.0)
         left = x0
-        for k, (name, value, share) in enumerate(row):
-            width = share * (x1 - x0)
-            key = f"title/{number}-{k}"
-            _draw_field(sketch, paper, key, (name, value), (left, top - high, left + width, top))
+        wide = widths(row, x1 - x0, _PAD * paper.text, (paper.text, paper.small))
+        for k, ((name, value, _), width) in enumerate(zip(row, wide, strict=True)):
+            key, place = f"title/{number}-{k}", (left, top - high, left + width, top)
+            cut += _draw_field(sketch, paper, key, (name, value), place)
             if number == 1:
-                _draw_titles(sketch, paper, fields, (left, top - high, left + width, top))
+                cut += _draw_titles(sketch, paper, fields, place)
             left += width
             if k < len(row) - 1:
                 sketch.line(f"{key}/edge", "ruling", (left, top), (left, top - high))
         sketch.line(f"title/{number}/rule", "title", (x0, top), (x1, top))
         top -= high
+    return cut
 
 
 def _draw_field(
     sketch: Sketch, paper: Paper, key: str, field: tuple[str, str], box: Bounds
-) -> None:
-    """Write a field's name in its upper left corner, its value below."""
+) -> list[str]:
+    """Write a field's name in its upper left corner, its value below; return the name if cut."""
     (name, value), (x0, y0, x1, y1) = field, box
-    pad = 0.4 * paper.text
+    pad = _PAD * paper.text
     room = x1 - x0 - 2 * pad
     words, height = fitted(name, room, paper.small)
     sketch.text(f"{key}/name", "ruling", words, (x0 + pad, y1 - 1.35 * paper.small), height)
-    if value:
-        words, height = fitted(value, room, paper.text, paper.small)
-        sketch.text(f"{key}/value", "title", words, (x0 + pad, y0 + 0.5 * paper.text), height)
+    if not value:
+        return []
+    low, high = y0 + _LOW * paper.small, y1 - _HIGH * paper.small
+    give = number_lines if name == NUMBER else in_lines
+    lines = give(value, room, high - low, paper.text, paper.small)
+    if len(lines.texts) == 1:
+        low = y0 + 0.5 * paper.text
+    _write(sketch, f"{key}/value", lines, (x0 + pad, low))
+    return [name] if lines.is_cut else []
 
 
-def _draw_titles(sketch: Sketch, paper: Paper, fields: Fields, box: Bounds) -> None:
-    """Write title and supplementary title."""
-    x0, y0, x1, _ = box
-    pad = 0.4 * paper.text
-    for key, text, size, y in (
-        ("title", fields.title, paper.large, y0 + 2.4 * paper.text),
-        ("supplement", fields.supplement, paper.text, y0 + 0.6 * paper.text),
+def _draw_titles(sketch: Sketch, paper: Paper, fields: Fields, box: Bounds) -> list[str]:
+    """Write title and supplementary title; return the names of what is cut."""
+    x0, y0, x1, y1 = box
+    pad = _PAD * paper.text
+    cut = []
+    low = y0 + 2.4 * paper.text
+    for name, text, size, y, high in (
+        ("TITLE", fields.title, paper.large, low, y1 - _HIGH * paper.small),
+        (
+            "SUPPLEMENTARY TITLE",
+            fields.supplement,
+            paper.text,
+            y0 + 0.6 * paper.text,
+            low - paper.small,
+        ),
     ):
         if text:
-            words, height = fitted(text, x1 - x0 - 2 * pad, size, paper.text, paper.small)
-            sketch.text(f"title/{key}", "title", words, (x0 + pad, y), height)
+            width = x1 - x0 - 2 * pad
+            lines = in_lines(text, width, high - y, size, paper.text, paper.small)
+            key = "title" if name == "TITLE" else "supplement"
+            _write(sketch, f"title/{key}", lines, (x0 + pad, y))
+            cut += [name] if lines.is_cut else []
+    return cut
 
 
-def fitted(text: str, width: float, *heights: float) -> tuple[str, float]:
-    """Give a text in the first of some heights by which it fits, else cut short in the last.
-
-    Examples
-    --------
-    >>> fitted("AB", 100.0, 2.5, 1.8)
-    ('AB', 2.5)
-    """
-    plain = shown(text)
-    for height in heights:
-        if text_width(plain, height) <= width:
-            return plain, height
-    least = heights[-1]
-    return wrapped(plain, width - text_width("..", least), least)[0] + "..", least
-
-
-def _columns(width: float) -> tuple[tuple[str, ...], tuple[float, ...]]:
-    """Give heads and shares of the revision columns: a date must fit in any case."""
-    if width > 120.0:
-        return ("REV", "DESCRIPTION", "BY", "DATE"), (0.12, 0.48, 0.16, 0.24)
-    if width > 80.0:
-        return ("REV", "DESCRIPTION", "BY", "DATE"), (0.13, 0.37, 0.18, 0.32)
-    return ("REV", "WHAT", "BY", "DATE"), (0.17, 0.23, 0.14, 0.46)
-
-
-def _draw_revisions(
-    sketch: Sketch, paper: Paper, rows: Sequence[RevisionRow], box: Bounds, count: int
-) -> None:
-    """Draw the rows of revisions from the bottom up, the head lowest, blank ones to fill."""
-    x0, y0, x1, _ = box
-    width = x1 - x0
-    head, shares = _columns(width)
-    step, h = _revision_row(paper), paper.text
-    shown_rows = list(rows)[-count:]
-    lines: list[tuple[str, ...]] = [head]
-    lines += [(r.rev or str(r.number), r.description, r.by, r.date) for r in shown_rows]
-    lines += [("", "", "", "")] * (count - len(shown_rows))
-    for number, cells in enumerate(lines):
-        y, left = y0 + number * step, x0
-        for k, (text, share) in enumerate(zip(cells, shares, strict=True)):
-            if text:
-                words, height = fitted(text, share * width - h, h, paper.small)
-                role = "ruling" if number == 0 else "title"
-                at = (left + 0.5 * h, y + 0.5 * h)
-                sketch.text(f"revisions/{number}-{k}", role, words, at, height)
-            left += share * width
-        if number:
-            sketch.line(f"revisions/rule-{number}", "ruling", (x0, y), (x1, y))
-    left = x0
-    for k, share in enumerate(shares[:-1]):
-        left += share * width
-        edge = ((left, y0), (left, y0 + len(lines) * step))
-        sketch.line(f"revisions/edge-{k}", "ruling", *edge)
+def _write(sketch: Sketch, key: str, lines: Lines, at: tuple[float, float]) -> None:
+    """Write lines one over the other from the left end of the lowest on."""
+    last = len(lines.texts) - 1
+    for number, text in enumerate(lines.texts):
+        y = at[1] + STEP * lines.height * (last - number)
+        name = key if number == 0 else f"{key}-{number + 1}"
+        sketch.text(name, "title", text, (at[0], y), lines.height)
