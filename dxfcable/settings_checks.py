@@ -79,6 +79,7 @@ def _check_cut_length(settings: Settings) -> None:
     if not settings.cut_length.marks:
         return
     from dxfcable.quantities import Style, parse_stiffness
+    from dxfcable.units import Doubt
 
     style = Style(
         length_unit="ft",
@@ -92,7 +93,9 @@ def _check_cut_length(settings: Settings) -> None:
                 if text:
                     parse_stiffness(text, style)
             except QuantityError as error:
-                _fail(f"cut_length.marks.{mark}.{key}", f"is {text!r}", error.remedy)
+                is_negative = error.code == Doubt.LOAD_SIGN.value
+                remedy = f"A {key} is above zero, such as 60 kN." if is_negative else error.remedy
+                _fail(f"cut_length.marks.{mark}.{key}", f"is {text!r}", remedy)
 
 
 def _choice(key: str, value: str, choices: tuple[str, ...]) -> None:

@@ -81,3 +81,9 @@ def test_what_cannot_be_is_refused_by_name(page: str, key: str) -> None:
 def test_a_force_without_unit_reads_where_the_office_names_one() -> None:
     page = "[units]\nforce = 'kN'\n[cut_length.marks.C1]\nmeasuring_tension = '60'"
     assert load(page).cut_length.stated(["C1"]).measuring_tension == "60"
+
+
+def test_a_negative_tension_is_no_tension() -> None:
+    with pytest.raises(DxfcableError) as refused:
+        load("[cut_length.marks.C1]\nmeasuring_tension = '-60 kN'")
+    assert refused.value.remedy.startswith("A measuring_tension is above zero")
