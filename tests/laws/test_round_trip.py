@@ -38,7 +38,7 @@ RULED = Options(units="m")
 
 
 @given(drawings(layout=layouts(ruled=False)))
-@settings(max_examples=20)
+@settings(max_examples=12)
 def test_a_generated_drawing(f: bytes) -> None:
     for law in laws.LAWS:
         law(f)
@@ -62,7 +62,7 @@ def test_each_release_with_its_rule_in_a_block(version: str, codes: Codes) -> No
 
 
 @given(drawings(layout=layouts(ruled=False)), edits())
-@settings(max_examples=20)
+@settings(max_examples=14)
 def test_edits_by_other_hands_outlast_ours(f: bytes, edit: Edit) -> None:
     left, expected = laws.stripped(edit.apply(laws.solved(f))), edit.apply(f)
     match edit.name:
@@ -103,7 +103,7 @@ def test_copies_of_ours_stay_and_everything_else_goes(f: bytes) -> None:
     st.integers(0, 12),
     st.sampled_from([(3.0, 1.5), (-40.0, 0.25)]),
 )
-@settings(max_examples=20)
+@settings(max_examples=12)
 def test_a_label_that_was_moved_stays_there(
     f: bytes, index: int, shift: tuple[float, float]
 ) -> None:
