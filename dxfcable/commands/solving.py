@@ -21,51 +21,49 @@ from dxfcable.job import revise_pieces, solve_pieces, strip_bytes
 from dxfcable.reporting import report
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Callable, Sequence
     from pathlib import Path
 
-    from dxfcable.asking import AskedRevision
+    from dxfcable.asking import AskedRevision, Options, Outcome
 
 
 def solve_all(drawings: Sequence[Path], asked: Asked, target: Target) -> int:
     """Solve each drawing and write it."""
     _check_rules(asked)
     _check_cut(asked)
-    check_target(target)
-    check_names(drawings, target)
 
-    def work(drawing: Path) -> Done:
-        output = result_path(drawing, drawings, target)
-        data = read_drawing(drawing)
-        pieces, outcome = solve_pieces(data, options(drawing, asked))
-        said = (
-            write_result(drawing, output, pieces, target) if output else "dry run: nothing written"
-        )
+    def issue(data: bytes, wanted: Options) -> tuple[list[memoryview], Outcome]:
+        return solve_pieces(data, wanted)
 
-        def show() -> None:
-            from dxfcable.reporting import terminal
-
-            terminal.show_solved(terminal.console(), outcome)
-            terminal.show_findings(terminal.console(), outcome.findings)
-            terminal.console().print(said)
-
-        document = report.solved(drawing.name, outcome)
-        return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
-
-    return run_over(drawings, asked, work)
+    return _issue_all(drawings, asked, target, issue, is_revised=False)
 
 
 def revise_all(
     drawings: Sequence[Path], asked: Asked, target: Target, revision: AskedRevision
 ) -> int:
     """Answer a load change in each issued drawing and write it."""
+
+    def issue(data: bytes, wanted: Options) -> tuple[list[memoryview], Outcome]:
+        return revise_pieces(data, wanted, revision)
+
+    return _issue_all(drawings, asked, target, issue, is_revised=True)
+
+
+def _issue_all(
+    drawings: Sequence[Path],
+    asked: Asked,
+    target: Target,
+    issue: Callable[[bytes, Options], tuple[list[memoryview], Outcome]],
+    *,
+    is_revised: bool,
+) -> int:
+    """Issue each drawing, write it and tell of it."""
     check_target(target)
     check_names(drawings, target)
 
     def work(drawing: Path) -> Done:
         output = result_path(drawing, drawings, target)
-        data = read_drawing(drawing)
-        pieces, outcome = revise_pieces(data, options(drawing, asked), revision)
+        pieces, outcome = issue(read_drawing(drawing), options(drawing, asked))
         said = (
             write_result(drawing, output, pieces, target) if output else "dry run: nothing written"
         )
@@ -73,11 +71,13 @@ def revise_all(
         def show() -> None:
             from dxfcable.reporting import terminal
 
-            terminal.show_revised(terminal.console(), outcome)
+            tell = terminal.show_revised if is_revised else terminal.show_solved
+            tell(terminal.console(), outcome)
             terminal.show_findings(terminal.console(), outcome.findings)
             terminal.console().print(said)
 
-        document = report.revised(drawing.name, outcome)
+        describe = report.revised if is_revised else report.solved
+        document = describe(drawing.name, outcome)
         return Done(document=document, code=outcome.exit_code, findings=outcome.findings, show=show)
 
     return run_over(drawings, asked, work)

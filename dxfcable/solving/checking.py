@@ -21,7 +21,7 @@ from dxfcable.solving.clearances import least_clearance
 from dxfcable.solving.enveloping import envelope
 from dxfcable.solving.gathering import governs, reactions, segments
 from dxfcable.solving.remarks import Remarks
-from dxfcable.solving.responding import TEMPERATURE, respond, temperatures
+from dxfcable.solving.responding import respond, temperatures
 from dxfcable.solving.state_remarks import (
     say_bowed,
     say_idle,
@@ -30,7 +30,7 @@ from dxfcable.solving.state_remarks import (
     slack_hangers,
 )
 from dxfcable.statics.combinations import CombinationError
-from dxfcable.statics.expansion import expand
+from dxfcable.statics.expansion import TEMPERATURE, expand
 
 if TYPE_CHECKING:
     from collections.abc import Sequence

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from dxfcable.solving.governing import weight_case
+from dxfcable.statics.expansion import TEMPERATURE
 from dxfcable.statics.heads import respond_with_heads
 from dxfcable.statics.heads_layout import CableChain, Head, StayMember
 from dxfcable.statics.patterns import case_factors, combine_states, weight_factor
@@ -21,8 +22,6 @@ if TYPE_CHECKING:
     from dxfcable.statics.beam import Floats
     from dxfcable.statics.catenary import Response
     from dxfcable.statics.combinations import Combination
-
-TEMPERATURE = "T"
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
